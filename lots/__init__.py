@@ -1,0 +1,1 @@
+"""The lot book: one app whose packages are its floors."""

@@ -1,0 +1,1 @@
+"""Database guards: the triggers that hold what no single-row constraint can."""

@@ -1,0 +1,1 @@
+"""Lot codes and open identification standards: pure text, no I/O."""

@@ -1,0 +1,1 @@
+"""Sugar solutions, water, instruments, colour, filling and sap: pure arithmetic, no I/O."""

@@ -1,0 +1,100 @@
+"""Where a step takes from: whole vessels, or single lots."""
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+
+from lots.models import Draw, DrawRole, Lot, Place, Step
+from lots.quantities import rounding
+
+from . import _ledger
+from ._door import Writer
+from .errors import RecordingError
+from .measures import NOT_MEASURED, Typed, liquid_mass
+
+
+@dataclass(frozen=True)
+class FromVessel:
+    """An amount out of a vessel; nothing typed takes all of it."""
+
+    vessel: Place
+    amount: Typed = NOT_MEASURED
+    emptied: bool = False
+    accept_difference: bool = False
+
+
+@dataclass(frozen=True)
+class FromLot:
+    """An amount of one lot: pieces, or mass/volume of a liquid or material; nothing typed: all."""
+
+    lot: Lot
+    amount: Typed = NOT_MEASURED
+    role: DrawRole = DrawRole.INGREDIENT
+    place: Place | None = None
+
+
+Source = FromVessel | FromLot
+
+
+def mixture_brix(vessel: Place) -> float | None:
+    """Return the true °Brix of a vessel's contents, or ``None`` where a share is unknown."""
+    rows = _ledger.contents(vessel)
+    mass = sum(row.quantity for row in rows)
+    if not mass or any(row.lot.solids_remaining is None for row in rows):
+        return None
+    solids = sum(int(row.lot.solids_remaining) for row in rows)
+    return 100 * solids / mass
+
+
+def pieces_or_milligrams(lot: Lot, amount: Typed) -> int | None:
+    """Return ledger units of an amount typed for a lot."""
+    if amount.value is None:
+        return None if lot.remaining is None else int(lot.remaining)
+    if lot.item.unit == "piece":
+        if amount.value != int(amount.value):
+            raise RecordingError("Count whole pieces.", field="quantity")
+        return int(amount.value)
+    brix = None
+    if lot.solids_remaining is not None and lot.remaining:
+        brix = 100 * int(lot.solids_remaining) / int(lot.remaining)
+    return liquid_mass(amount, brix)
+
+
+def draw(writer: Writer, step: Step, sources: Sequence[Source]) -> _ledger.Taken:
+    """Draw every source; returns the mass and solids of the ingredients (aids left out)."""
+    mass: int | None = 0
+    solids: int | None = 0
+    for source in sources:
+        if isinstance(source, FromVessel):
+            asked = liquid_mass(source.amount, mixture_brix(source.vessel))
+            taken = _ledger.take_from_vessel(
+                writer,
+                step,
+                source.vessel,
+                asked,
+                emptied=source.emptied,
+                accept_difference=source.accept_difference,
+            )
+        else:
+            quantity = pieces_or_milligrams(source.lot, source.amount)
+            row: Draw = _ledger.take(
+                writer, step, source.lot, quantity, source.role, place=source.place
+            )
+            if source.role not in _ledger.SHARES:
+                continue
+            taken = _ledger.Taken(_mass_of(source.lot, quantity), row.solids)
+        mass = None if mass is None or taken.quantity is None else mass + taken.quantity
+        solids = None if solids is None or taken.solids is None else solids + taken.solids
+    return _ledger.Taken(mass, solids)
+
+
+def _mass_of(lot: Lot, quantity: int | None) -> int | None:
+    if quantity is None or lot.item.unit != "piece":
+        return quantity
+    return None if lot.piece_mg is None else lot.piece_mg * quantity
+
+
+def brix_of(taken: _ledger.Taken) -> float | None:
+    """Return the true °Brix of what was taken together."""
+    if not taken.quantity or taken.solids is None:
+        return None
+    return float(rounding.brix_of(taken.quantity, taken.solids))

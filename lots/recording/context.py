@@ -1,0 +1,41 @@
+"""Who records, where, and when: the arguments every recorder shares."""
+
+from collections.abc import Iterator
+from contextlib import contextmanager
+from dataclasses import dataclass
+from datetime import datetime
+from typing import Any
+from uuid import UUID
+
+from lots.models import Facility, User
+from lots.rules.roles import Action
+
+from ._door import Writer, door
+
+
+@dataclass(frozen=True)
+class Context:
+    """The facility and the person; ``now`` is set by the demo loader alone.
+
+    ``client`` is the form's own id and its content: the same form sent twice is recorded once.
+    """
+
+    facility: Facility
+    by: User
+    now: datetime | None = None
+    client: tuple[UUID, Any] | None = None
+    reason: str = ""
+
+    @contextmanager
+    def open(self, name: str, action: Action = Action.RECORD) -> Iterator[Writer]:
+        """Open the door for one record."""
+        with door(
+            facility=self.facility,
+            by=self.by,
+            action=action,
+            name=name,
+            reason=self.reason,
+            now=self.now,
+            client=self.client,
+        ) as writer:
+            yield writer

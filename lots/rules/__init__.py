@@ -1,0 +1,1 @@
+"""Limits as data and their evaluation; roles, retention and regulators. No Django."""

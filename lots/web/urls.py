@@ -1,0 +1,3 @@
+"""Addresses of the book."""
+
+urlpatterns: list = []

@@ -1,0 +1,5 @@
+"""Addresses: all of them are the lot book's."""
+
+from django.urls import include, path
+
+urlpatterns = [path("", include("lots.web.urls"))]
