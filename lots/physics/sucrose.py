@@ -40,8 +40,12 @@ def refractive_index(brix: float, celsius: float) -> float:
 
     Method: a fit of 86 rows of the ICUMSA 1974 scale and of the published correction tables.
     """
-    w = within("Brix", brix, 0.0, 85.0, "°Bx") / 100
-    d = within("Temperature", celsius, 0.0, 40.0, "°C") - 20
+    within("Brix", brix, 0.0, 85.0, "°Bx")
+    return _index(brix, within("Temperature", celsius, 0.0, 40.0, "°C"))
+
+
+def _index(brix: float, celsius: float) -> float:
+    w, d = brix / 100, celsius - 20
     at_20 = sum(c * w**j for j, c in enumerate(_INDEX))
     first = -8.98247e-5 - 1.430604e-4 * w - 6.387489e-6 * w**2
     second = -1.744739e-6 + 5.145e-6 * w - 5.13667e-6 * w**2
@@ -49,8 +53,12 @@ def refractive_index(brix: float, celsius: float) -> float:
 
 
 def brix_from_refractive_index(n: float, celsius: float) -> float:
-    """Return °Bx (0–85) whose index at a temperature is the one given."""
-    return solve(lambda b: refractive_index(b, celsius), 0.0, 85.0, n, "Brix")
+    """Return °Bx whose index at 0–40 °C is the one given: −3 to 85.
+
+    Below zero lies a cold correction of plain water, as the published tables print it.
+    """
+    within("Temperature", celsius, 0.0, 40.0, "°C")
+    return solve(lambda b: _index(b, celsius), -3.0, 85.0, n, "Brix")
 
 
 def water_activity(brix: float, celsius: float) -> float:

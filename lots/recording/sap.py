@@ -6,6 +6,7 @@ from datetime import datetime
 from lots.models import Item, ItemKind, Place, Step, StepKind
 
 from . import _judge, _ledger, _sources
+from ._door import Writer
 from .context import Context
 from .errors import RecordingError
 from .measures import NOT_MEASURED, DensityReading, Liquid, Typed, celsius
@@ -83,39 +84,48 @@ def record_concentration(
     """
     if item.kind != ItemKind.CONCENTRATE:
         raise RecordingError("An RO run makes concentrate.", field="item")
+    detail = {
+        "permeate": permeate.text,
+        "permeate_unit": permeate.unit,
+        "pressure": pressure.text,
+        "pressure_unit": pressure.unit,
+    }
     with context.open("concentration") as writer:
         step = writer.step(
-            StepKind.CONCENTRATION,
-            at,
-            ended_at=ended_at,
-            place=machine,
-            note=note,
-            detail={
-                "permeate": permeate.text,
-                "permeate_unit": permeate.unit,
-                "pressure": pressure.text,
-                "pressure_unit": pressure.unit,
-            },
+            StepKind.CONCENTRATION, at, ended_at=ended_at, place=machine, note=note, detail=detail
         )
         taken = _sources.draw(writer, step, sources)
-        true = brix.true_brix() if brix else None
-        liquid = Liquid(amount, true)
-        quantity, solids = liquid.milligrams(), liquid.solids()
-        estimated = quantity is None and bool(true) and taken.solids is not None
-        if estimated and true and taken.solids is not None:
-            quantity, solids = round(taken.solids * 100 / true), taken.solids
-        lot = _ledger.make(
-            writer,
-            step,
-            item,
-            place=into,
-            quantity=quantity,
-            solids=solids if solids is not None else taken.solids,
-            at=ended_at,
-            estimated=estimated,
-            typed_value=amount.text,
-            typed_unit=amount.unit,
-        )
-        if brix is not None:
-            _judge.note_density(writer, step, lot, brix)
+        _concentrate(writer, step, item, into, taken, amount, brix)
         return step
+
+
+def _concentrate(
+    writer: Writer,
+    step: Step,
+    item: Item,
+    into: Place,
+    taken: _ledger.Taken,
+    amount: Typed,
+    brix: DensityReading | None,
+) -> None:
+    """Make the concentrate's lot: measured, or its mass from the solids that came in."""
+    true = brix.true_brix() if brix else None
+    liquid = Liquid(amount, true)
+    quantity, solids = liquid.milligrams(), liquid.solids()
+    estimated = quantity is None and bool(true) and taken.solids is not None
+    if estimated and true and taken.solids is not None:
+        quantity, solids = round(taken.solids * 100 / true), taken.solids
+    lot = _ledger.make(
+        writer,
+        step,
+        item,
+        place=into,
+        quantity=quantity,
+        solids=solids if solids is not None else taken.solids,
+        at=step.ended_at,
+        estimated=estimated,
+        typed_value=amount.text,
+        typed_unit=amount.unit,
+    )
+    if brix is not None:
+        _judge.note_density(writer, step, lot, brix)
