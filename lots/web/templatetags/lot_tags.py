@@ -8,7 +8,7 @@ from typing import Any, NamedTuple
 from zoneinfo import ZoneInfo
 
 from django import template
-from django.forms import BaseForm
+from django.forms import BaseForm, MultiWidget
 from django.forms.boundfield import BoundField
 from django.template.context import Context
 from django.utils.html import format_html
@@ -123,6 +123,19 @@ def local_clock(moment: datetime | None, place: object = "UTC") -> str:
 def focus_id(field: BoundField) -> str:
     """Return the id of the first input of a field: what a label or an error points to."""
     return field.id_for_label or f"{field.auto_id}_0"
+
+
+@register.filter
+def is_choice_group(field: BoundField) -> bool:
+    """Whether the field is a set of choices under a legend; a number with its unit is not."""
+    return field.use_fieldset and not isinstance(field.field.widget, MultiWidget)
+
+
+@register.filter
+def control(field: BoundField) -> SafeString:
+    """Render the input; the parts of a number with its unit are described like any other."""
+    described = field.aria_describedby
+    return field.as_widget(attrs={"aria-describedby": described} if described else None)
 
 
 def _bound(form: BaseForm, entries: Iterable[Any]) -> list[BoundField]:

@@ -57,18 +57,18 @@ function addRow(prefix) {
 
 /* ---- the time where the facility is ---- */
 
-function nowThere() {
+function timeThere(moment) {
   const timeZone = document.body.dataset.zone || undefined;
   const parts = new Intl.DateTimeFormat("en-CA", {
     timeZone, hourCycle: "h23", year: "numeric", month: "2-digit", day: "2-digit",
     hour: "2-digit", minute: "2-digit",
-  }).formatToParts(new Date());
+  }).formatToParts(moment);
   const part = (type) => parts.find((entry) => entry.type === type).value;
   return { date: `${part("year")}-${part("month")}-${part("day")}`, time: `${part("hour")}:${part("minute")}` };
 }
 
 function setToNow(input) {
-  const { date, time } = nowThere();
+  const { date, time } = timeThere(new Date());
   const values = { "datetime-local": `${date}T${time}`, date, time };
   input.value = values[input.type] ?? `${date} ${time}`;
   input.dispatchEvent(new Event("input", { bubbles: true }));
@@ -157,8 +157,8 @@ function offer(form, idInput, draft) {
   const drop = document.createElement("button");
   bar.className = "draft";
   bar.setAttribute("role", "status");
-  const when = new Date(draft.at).toLocaleTimeString([], { hour: "2-digit", minute: "2-digit" });
-  words.textContent = `Typed here at ${when} and not recorded.`;
+  const { date, time } = timeThere(new Date(draft.at));
+  words.textContent = `Typed here on ${date} at ${time} and not recorded.`;
   use.type = drop.type = "button";
   use.textContent = "Continue with it";
   drop.textContent = "Discard it";
