@@ -43,7 +43,7 @@ def allow(action: Action) -> Callable[[View], View]:
                     path=request.path[:300],
                     at=timezone.now(),
                 )
-            return view(request, *args, **kwargs)
+            return view(request, slug, *args, **kwargs)
 
         guarded.policy = action  # type: ignore[attr-defined]
         return guarded

@@ -1,3 +1,30 @@
-"""Addresses of the book."""
+"""Addresses of the book: the facility stands in each."""
 
-urlpatterns: list = []
+from django.contrib.auth import views as auth
+from django.urls import path
+
+from .views import browse, decide, record
+
+urlpatterns = [
+    path("", browse.home, name="home"),
+    path("login/", auth.LoginView.as_view(), name="login"),
+    path("logout/", auth.LogoutView.as_view(), name="logout"),
+    path("password/", auth.PasswordChangeView.as_view(), name="password_change"),
+    path("password/done/", auth.PasswordChangeDoneView.as_view(), name="password_change_done"),
+    path("f/<slug:slug>/", browse.today, name="today"),
+    path("f/<slug:slug>/lots/", browse.lots, name="lots"),
+    path("f/<slug:slug>/lots/<uuid:uuid>/", browse.lot, name="lot"),
+    path("f/<slug:slug>/lots/<uuid:uuid>/hold/", decide.hold, name="hold"),
+    path("f/<slug:slug>/lots/<uuid:uuid>/release/", decide.release, name="release"),
+    path("f/<slug:slug>/holds/<uuid:uuid>/", decide.decide, name="decide"),
+    path("f/<slug:slug>/record/<slug:kind>/", record.record, name="record"),
+    path("f/<slug:slug>/steps/<uuid:uuid>/", record.step, name="step"),
+    path("f/<slug:slug>/steps/<uuid:uuid>/void/", decide.void, name="void"),
+    path("f/<slug:slug>/steps/<uuid:uuid>/<slug:act>/", record.running, name="running"),
+    path("f/<slug:slug>/vessels/", browse.vessels, name="vessels"),
+    path("f/<slug:slug>/trace/", browse.trace, name="trace"),
+    path("f/<slug:slug>/people/", decide.people, name="people"),
+    path("f/<slug:slug>/people/<uuid:uuid>/", decide.person, name="person"),
+    path("f/<slug:slug>/rules/", browse.rules, name="rules"),
+    path("f/<slug:slug>/journal/", browse.journal, name="journal"),
+]

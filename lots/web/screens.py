@@ -1,0 +1,23 @@
+"""Which form records which kind of step: plain tables, so that grep finds every screen."""
+
+from lots.models import StepKind
+
+from .forms import sap, syrup
+from .forms.base import RecordForm
+
+SCREENS: dict[str, type[RecordForm]] = {
+    StepKind.COLLECTION.value: sap.CollectionForm,
+    StepKind.CONCENTRATION.value: sap.ConcentrationForm,
+    StepKind.BOIL.value: sap.BoilForm,
+    StepKind.FILTRATION.value: syrup.FiltrationForm,
+    StepKind.DRUM_FILL.value: syrup.DrumFillForm,
+    StepKind.CONTAINER_FILL.value: syrup.ContainerFillForm,
+    StepKind.SALE.value: syrup.SaleForm,
+    StepKind.RECEIVING.value: syrup.ReceivingForm,
+    StepKind.CLEANING.value: syrup.CleaningForm,
+}
+RUNNING: dict[str, type[RecordForm]] = {
+    "feed": sap.FeedForm,
+    "draw-off": sap.DrawOffForm,
+    "close": sap.CloseBoilForm,
+}

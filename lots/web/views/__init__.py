@@ -1,0 +1,1 @@
+"""Views: policy, fetch, form, one recorder, redirect."""

@@ -1,0 +1,135 @@
+"""Deciding: holds, releases, voids, and the people of a facility."""
+
+from uuid import UUID
+
+from django.contrib import messages
+from django.http import HttpRequest, HttpResponse
+from django.shortcuts import get_object_or_404, redirect, render
+from django.views.decorators.http import require_POST
+
+from lots.models import Hold, Membership
+from lots.recording import decisions, setup
+from lots.recording.errors import RecordingError
+from lots.rules.roles import Action, Role
+
+from ..access import allow, context_of, facility_of, get_lot, get_step
+
+
+def _said(request: HttpRequest, name: str) -> str:
+    return request.POST.get(name, "").strip()
+
+
+@allow(Action.HOLD)
+@require_POST
+def hold(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
+    """Hold a lot and what was made from it."""
+    lot = get_lot(request, uuid)
+    try:
+        held = decisions.place_hold(context_of(request), lot=lot, reason=_said(request, "reason"))
+    except RecordingError as error:
+        messages.error(request, error.message)
+    else:
+        messages.success(request, f"On hold: {len(held)} lot(s).")
+    return redirect("lot", slug, lot.uuid)
+
+
+@allow(Action.RELEASE)
+@require_POST
+def decide(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
+    """Complete the corrective action and end a hold by a signed decision."""
+    found = get_object_or_404(Hold, uuid=uuid, lot__facility=facility_of(request))
+    context = context_of(request)
+    try:
+        for action in found.actions.filter(completed_at=None):
+            decisions.complete_action(
+                context,
+                action=action,
+                cause=_said(request, "cause"),
+                correction=_said(request, "correction"),
+                prevention=_said(request, "prevention"),
+                evaluation=_said(request, "evaluation"),
+            )
+        decisions.decide_hold(
+            context,
+            hold=found,
+            decision=_said(request, "decision"),
+            reason=_said(request, "reason"),
+            shown=_said(request, "shown"),
+        )
+    except RecordingError as error:
+        messages.error(request, error.message)
+    else:
+        messages.success(request, "Decision signed.")
+    return redirect("lot", slug, found.lot.uuid)
+
+
+@allow(Action.RELEASE)
+@require_POST
+def release(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
+    """Release a waiting lot by a signed decision."""
+    lot = get_lot(request, uuid)
+    try:
+        decisions.release_lot(
+            context_of(request), lot=lot, reason=_said(request, "reason"),
+            shown=_said(request, "shown"),
+        )  # fmt: skip
+    except RecordingError as error:
+        messages.error(request, error.message)
+    else:
+        messages.success(request, f"{lot.code} is released.")
+    return redirect("lot", slug, lot.uuid)
+
+
+@allow(Action.VOID)
+@require_POST
+def void(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
+    """Void a record."""
+    step = get_step(request, uuid)
+    try:
+        decisions.void_step(context_of(request), step=step, reason=_said(request, "reason"))
+    except RecordingError as error:
+        messages.error(request, error.message)
+    else:
+        messages.success(request, "The record is void; what it drew is back.")
+    return redirect("step", slug, step.uuid)
+
+
+@allow(Action.MANAGE_PEOPLE)
+def people(request: HttpRequest, slug: str) -> HttpResponse:
+    """List the people, and add one."""
+    if request.method == "POST":
+        try:
+            setup.add_person(
+                context_of(request),
+                username=_said(request, "username"),
+                password=request.POST.get("password", ""),
+                role=Role(_said(request, "role")),
+                full_name=_said(request, "full_name"),
+            )
+        except (RecordingError, ValueError) as error:
+            messages.error(request, str(error))
+        else:
+            messages.success(request, "Added.")
+            return redirect("people", slug)
+    members = Membership.objects.filter(facility=facility_of(request)).select_related("user")
+    context = {"title": "People", "members": members.order_by("pk"), "roles": list(Role)}
+    return render(request, "lots/people.html", context)
+
+
+@allow(Action.MANAGE_PEOPLE)
+@require_POST
+def person(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
+    """Disable, enable or reset a person."""
+    member = get_object_or_404(Membership, facility=facility_of(request), user__uuid=uuid)
+    try:
+        setup.change_person(
+            context_of(request),
+            member=member,
+            active={"disable": False, "enable": True}.get(_said(request, "do")),
+            password=request.POST.get("password", ""),
+        )
+    except RecordingError as error:
+        messages.error(request, error.message)
+    else:
+        messages.success(request, "Changed.")
+    return redirect("people", slug)

@@ -1,0 +1,80 @@
+"""Recording: one form a step, and the page of a running one."""
+
+from uuid import UUID
+
+from django.contrib import messages
+from django.http import Http404, HttpRequest, HttpResponse
+from django.shortcuts import redirect, render
+
+from lots.recording._door import AlreadyRecorded
+from lots.recording.errors import RecordingError
+from lots.rules.roles import Action
+
+from ..access import allow, context_of, facility_of, get_step
+from ..forms.base import RecordForm
+from ..screens import RUNNING, SCREENS
+
+
+@allow(Action.RECORD)
+def record(request: HttpRequest, slug: str, kind: str) -> HttpResponse:
+    """Show a step's form, or write its record."""
+    if kind not in SCREENS:
+        raise Http404
+    form = SCREENS[kind](facility_of(request), request.POST if request.method == "POST" else None)
+    if request.method == "POST" and form.is_valid():
+        try:
+            step = form.record(context_of(request, form.client()))
+        except AlreadyRecorded as answer:
+            messages.info(request, "This form was recorded before; here is its record.")
+            if answer.step is None:
+                return redirect("today", slug)
+            return redirect("step", slug, answer.step.uuid)
+        except RecordingError as error:
+            form.refuse(error)
+        else:
+            messages.success(request, f"Recorded: {step}.")
+            return redirect("step", slug, step.uuid)
+    return _show(request, form)
+
+
+@allow(Action.RECORD)
+def running(request: HttpRequest, slug: str, uuid: UUID, act: str) -> HttpResponse:
+    """Record one act inside a running step."""
+    if act not in RUNNING:
+        raise Http404
+    step = get_step(request, uuid)
+    form = RUNNING[act](facility_of(request), request.POST if request.method == "POST" else None)
+    if request.method == "POST" and form.is_valid():
+        try:
+            form.record_on(context_of(request, form.client()), step)  # type: ignore[attr-defined]
+        except AlreadyRecorded:
+            messages.info(request, "This form was recorded before.")
+            return redirect("step", slug, step.uuid)
+        except RecordingError as error:
+            form.refuse(error)
+        else:
+            messages.success(request, f"Recorded: {form.title}.")
+            return redirect("step", slug, step.uuid)
+    return _show(request, form)
+
+
+def _show(request: HttpRequest, form: RecordForm) -> HttpResponse:
+    status = 422 if form.errors else 200
+    return render(request, "lots/record.html", {"form": form, "title": form.title}, status=status)
+
+
+@allow(Action.VIEW)
+def step(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
+    """Show one recorded act."""
+    found = get_step(request, uuid)
+    context = {
+        "step": found,
+        "title": found.get_kind_display(),
+        "made": found.made_lots.select_related("item", "printed_code", "facility"),
+        "draws": found.draws.select_related("lot__item", "lot__printed_code", "ended_by"),
+        "readings": found.readings.select_related("instrument"),
+        "checks": found.checks.select_related("lot"),
+        "events": found.events.order_by("at", "pk"),
+        "acts": RUNNING if found.kind == "boil" and found.ended_at is None else {},
+    }
+    return render(request, "lots/step.html", context)
