@@ -260,6 +260,7 @@ def adjust(writer: Writer, lot: Lot, difference: int, place: Place | None) -> No
         adjusted=F("adjusted") + difference, solids_adjusted=F("solids_adjusted") + solids
     )
     row = Stock.objects.filter(lot=lot, **({"place": place} if place else {})).first()
+    place = place or lot.made_by.place
     if row is not None:
         Stock.objects.filter(pk=row.pk).update(quantity=F("quantity") + difference)
     elif place is not None:

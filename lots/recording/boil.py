@@ -28,7 +28,7 @@ from lots.rules.verdict import Stage
 from . import _judge, _ledger, _sources
 from ._door import Writer
 from .context import Context
-from .errors import RecordingError
+from .errors import NotEnough, RecordingError
 from .measures import NOT_MEASURED, DensityReading, Liquid, Observation, Typed, celsius
 
 
@@ -119,9 +119,7 @@ def put_back(context: Context, *, boil: Step, lot: Lot, at: datetime, amount: Ty
                 f"{lot.code} was already drawn by another step: close this boil and open the next.",
                 field="lot",
             )
-        brix = 100 * int(lot.solids_remaining) / int(lot.remaining) if lot.remaining else None
-        mass = Liquid(amount, brix).milligrams() or int(lot.remaining or 0)
-        solids = int(lot.solids_remaining or 0) * mass // max(int(lot.remaining or 0), 1)
+        mass, solids = _share_put_back(writer, lot, amount)
         _raise_made(writer, lot, -mass, -solids)
         return _event(
             writer,
@@ -190,6 +188,19 @@ def record_boil(
             brix=stays_brix,
             emptied=emptied,
         )
+
+
+def _share_put_back(writer: Writer, lot: Lot, amount: Typed) -> tuple[int, int]:
+    """Return the mass and solids that go back; a gauge difference above the book takes all."""
+    book, solids = int(lot.remaining or 0), int(lot.solids_remaining or 0)
+    brix = 100 * solids / book if book else None
+    mass = Liquid(amount, brix).milligrams()
+    if mass is None:
+        return book, solids
+    if mass > book * (100 + writer.facility.gauge_tolerance_percent) // 100:
+        raise NotEnough(f"{lot.code} holds less than that by the book.", field="amount")
+    mass = min(mass, book)
+    return mass, solids * mass // max(book, 1)
 
 
 def _running(writer: Writer, boil: Step) -> Step:

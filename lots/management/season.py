@@ -1,0 +1,392 @@
+"""Load the fictional demo season by the same recording functions that people use."""
+
+import json
+from collections.abc import Callable
+from dataclasses import dataclass, field
+from datetime import datetime, timedelta
+from decimal import Decimal
+from pathlib import Path
+from typing import Any
+from zoneinfo import ZoneInfo
+
+from django.conf import settings
+
+from lots.models import DrawRole, Facility, Hold, Item, Lot, Partner, Place, Step, StepKind, User
+from lots.recording import (
+    boil,
+    container_fill,
+    decisions,
+    goods_out,
+    receiving,
+    sap,
+    setup,
+    syrup,
+    upkeep,
+)
+from lots.recording._sources import FromLot, FromVessel
+from lots.recording.context import Context
+from lots.recording.measures import NOT_MEASURED, DensityReading, Typed
+from lots.rules.roles import Role
+
+PASSWORD = "sugaring-2026"  # noqa: S105 - printed for the demo alone
+ITEMS = (
+    ("Sap", "sap", "mg"), ("Concentrate", "concentrate", "mg"), ("Syrup", "syrup", "mg"),
+    ("Pan contents", "contents", "mg"), ("Filter aid", "filter-aid", "mg"),
+    ("Filter paper", "filter-paper", "piece"), ("Defoamer", "defoamer", "mg"),
+    ("Cleaner", "cleaner", "mg"), ("Gallon jug", "container", "piece"),
+    ("Half-gallon jug", "container", "piece"), ("Quart jug", "container", "piece"),
+    ("Pint jug", "container", "piece"), ("250 mL glass", "container", "piece"),
+    ("Closure", "closure", "piece"), ("Label, amber, version 3", "label", "piece"),
+)  # fmt: skip
+PRODUCTS = (
+    ("Amber gallon", "1", "US gal"), ("Amber half-gallon", "0.5", "US gal"),
+    ("Amber quart", "1", "qt"), ("Amber pint", "1", "pt"), ("Amber 250 mL glass", "250", "mL"),
+)  # fmt: skip
+PLACES = (
+    ("North woods", "woods"), ("South woods", "woods"), ("Tank 1", "tank"), ("Tank 2", "tank"),
+    ("Tank 3", "tank"), ("RO", "ro"), ("Evaporator", "evaporator"), ("Press", "press"),
+    ("Batch tank", "batch-tank"), ("Batch tank 2", "batch-tank"), ("Filtered tank", "batch-tank"),
+    ("Canner", "canner"), ("Store", "room"), ("Supply room", "room"),
+)  # fmt: skip
+
+
+def measure(pair: list[str] | None) -> Typed:
+    """Return a typed amount from a fixture's [number, unit]."""
+    return Typed(Decimal(pair[0]), pair[1]) if pair else NOT_MEASURED
+
+
+def density(pair: list[str]) -> DensityReading:
+    """Return a 60 °F hydrometer reading from [reading, sample °F]."""
+    return DensityReading(Decimal(pair[0]), sample=Typed(Decimal(pair[1]), "°F"))
+
+
+def compensated(number: str) -> DensityReading:
+    """Return a reading by a compensating refractometer."""
+    return DensityReading(Decimal(number), device="refractometer", compensates=True)
+
+
+@dataclass
+class Season:
+    """The demo's registers and its clock."""
+
+    facility: Facility
+    people: dict[str, User]
+    start: datetime
+    tags: dict[str, Lot] = field(default_factory=dict)
+    sales: dict[str, Step] = field(default_factory=dict)
+
+    def at(self, day: float, hour: float) -> datetime:
+        """Return a moment of the season."""
+        return self.start + timedelta(days=day, hours=hour)
+
+    def context(self, row: dict[str, Any], role: str = "recorder") -> Context:
+        """Return who records a row, minutes after the act or days late."""
+        hour = row.get("end", row["hour"])
+        now = self.at(row["day"] + row.get("late", 0), hour) + timedelta(minutes=5)
+        return Context(self.facility, self.people[role], now=now)
+
+    def place(self, name: str) -> Place:
+        """Return a place by name."""
+        return Place.objects.get(facility=self.facility, name=name)
+
+    def item(self, name: str) -> Item:
+        """Return an item by name."""
+        return Item.objects.get(facility=self.facility, name=name)
+
+    def partner(self, name: str) -> Partner:
+        """Return a partner by name."""
+        return Partner.objects.get(facility=self.facility, name=name)
+
+    def material(self, name: str) -> Lot:
+        """Return the lot in use of a material."""
+        return Lot.objects.filter(item=self.item(name)).order_by("made_at").get()
+
+
+def load(now: datetime) -> Season:
+    """Make the facility and replay the season so that it ends the day before ``now``."""
+    path = Path(settings.BASE_DIR) / "fixtures" / "demo-season.json"
+    data = json.loads(path.read_text(encoding="utf-8"))
+    zone = ZoneInfo(data["facility"]["zone"])
+    midnight = now.astimezone(zone).replace(hour=0, minute=0, second=0, microsecond=0)
+    start = midnight - timedelta(days=data["last_day"] + 1)
+    season = _prepare(data, start.astimezone(ZoneInfo("UTC")))
+    for row in data["records"]:
+        ACTS[row["do"]](season, row, season.at(row["day"], row["hour"]))
+    return season
+
+
+def _prepare(data: dict[str, Any], start: datetime) -> Season:
+    owner = User.objects.create_user("demo-owner", password=PASSWORD)
+    facility = setup.create_facility(owner=owner, fictional=True, now=start, **data["facility"])
+    early = Context(facility, owner, now=start)
+    people = {"owner": owner}
+    for role in (Role.LEAD, Role.RECORDER, Role.INSPECTOR):
+        member = setup.add_person(
+            early, username=f"demo-{role.value}", password=PASSWORD, role=role
+        )
+        people[role.value] = member.user
+    for name, kind in (*PLACES, *((name, "drum") for name in data["drums"])):
+        setup.add_place(early, name=name, kind=kind)
+    for name, kind, unit in ITEMS:
+        setup.add_item(early, name=name, kind=kind, unit=unit)
+    for name, size, unit in PRODUCTS:
+        setup.add_item(
+            early, name=name, kind="packed", unit="piece", size_value=size, size_unit=unit,
+            label_grade="Amber", label_version="3",
+        )  # fmt: skip
+    for kind in ("supplier", "customer"):
+        for number, name in enumerate(data[f"{kind}s"]):
+            setup.add_partner(
+                early, name=name, kind=kind, phone=f"802-555-01{number:02d}",
+                email=f"{kind}{number}@example.com", address=f"{number + 1} Example Street",
+            )  # fmt: skip
+    return Season(facility, people, start)
+
+
+def _receive(season: Season, row: dict[str, Any], at: datetime) -> None:
+    receiving.record_receiving(
+        season.context(row), at=at, supplier=season.partner(row["supplier"]),
+        item=season.item(row["item"]), amount=measure(row["amount"]),
+        place=season.place(row["place"]), supplier_code=row["code"], document=row["document"],
+        statement=row["statement"], decision=row.get("decision", "accept"),
+        decision_reason=row.get("reason", ""),
+        brix=density(row["brix"]) if "brix" in row else None,
+    )  # fmt: skip
+
+
+def _opening(season: Season, row: dict[str, Any], at: datetime) -> None:
+    receiving.record_opening_stock(
+        season.context(row), at=at, item=season.item("Syrup"), amount=measure(row["amount"]),
+        place=season.place(row["drum"]), document=row["document"], code=row["code"],
+        brix=density(row["brix"]),
+    )  # fmt: skip
+
+
+def _clean(season: Season, row: dict[str, Any], at: datetime) -> None:
+    agent = season.material("Cleaner") if row.get("agent") else None
+    upkeep.record_cleaning(
+        season.context(row), at=at, vessel=season.place(row["vessel"]), break_kind=row["kind"],
+        agent=agent, amount=Typed(Decimal("0.5"), "lb") if agent else NOT_MEASURED,
+        strength=row.get("strength", ""), verified_by=row.get("verified", ""),
+    )  # fmt: skip
+
+
+def _collect(season: Season, row: dict[str, Any], at: datetime) -> None:
+    sap.record_collection(
+        season.context(row), at=at, woods=season.place(row["woods"]),
+        tank=season.place(row["tank"]), item=season.item("Sap"), amount=measure(row["amount"]),
+        brix=compensated(row["brix"]), note="Read from a paper page" if row["late"] else "",
+    )  # fmt: skip
+
+
+def _concentrate(season: Season, row: dict[str, Any], at: datetime) -> None:
+    sap.record_concentration(
+        season.context(row), at=at, ended_at=at + timedelta(hours=1.5),
+        machine=season.place("RO"), into=season.place(row["into"]),
+        sources=[FromVessel(season.place(name)) for name in row["sources"]],
+        item=season.item("Concentrate"), amount=measure(row["amount"]),
+        brix=compensated(row["brix"]), permeate=measure(row["permeate"]),
+    )  # fmt: skip
+
+
+def _boil(season: Season, row: dict[str, Any], at: datetime) -> None:
+    day, context = row["day"], season.context(row)
+    fire = boil.open_boil(
+        context, at=at, evaporator=season.place("Evaporator"),
+        water_boiling=Typed(Decimal(row["water"]), "°F"), since_last_run="left as they were",
+    )  # fmt: skip
+    defoamer = FromLot(
+        season.material("Defoamer"), Typed(Decimal(row["defoam"]), "lb"), DrawRole.AID
+    )
+    sources = [*(FromVessel(season.place(name)) for name in row["sources"]), defoamer]
+    boil.feed_boil(context, boil=fire, at=at, sources=sources)
+    for number, off in enumerate(row["offs"]):
+        if row["put_back"] and number == 1:
+            _light_draw_off(season, fire, context, season.at(day, off["hour"] - 1))
+        draw = boil.DrawOff(
+            season.at(day, off["hour"]), season.place("Batch tank"),
+            Typed(Decimal(off["amount"]), "US gal"), density(off["brix"]),
+            Typed(Decimal("218.9"), "°F"),
+        )  # fmt: skip
+        boil.draw_off(context, boil=fire, item=season.item("Syrup"), draw=draw)
+    boil.close_boil(
+        context, boil=fire, at=season.at(day, row["end"]), contents=season.item("Pan contents"),
+        stays=measure(row["stays"]), brix=compensated(row["stays_brix"]),
+    )  # fmt: skip
+
+
+def _light_draw_off(season: Season, fire: Step, context: Context, at: datetime) -> None:
+    light = boil.DrawOff(
+        at, season.place("Filtered tank"), Typed(Decimal(3), "US gal"), density(["58.0", "60"])
+    )
+    lot = boil.draw_off(context, boil=fire, item=season.item("Syrup"), draw=light)
+    boil.put_back(
+        context, boil=fire, lot=lot, at=at + timedelta(minutes=4),
+        amount=Typed(Decimal(3), "US gal"),
+    )  # fmt: skip
+
+
+def _open_boil(season: Season, row: dict[str, Any], at: datetime) -> None:
+    fire = boil.open_boil(
+        season.context(row), at=at, evaporator=season.place("Evaporator"),
+        water_boiling=Typed(Decimal("211.4"), "°F"), since_last_run="left as they were",
+    )  # fmt: skip
+    boil.feed_boil(
+        season.context(row), boil=fire, at=at, sources=[FromVessel(season.place("Tank 1"))]
+    )
+
+
+def _filter(season: Season, row: dict[str, Any], at: datetime) -> None:
+    aids = [
+        FromLot(season.material("Filter aid"), Typed(Decimal(row["aid"]), "lb"), DrawRole.AID),
+        FromLot(
+            season.material("Filter paper"), Typed(Decimal(row["paper"]), "pieces"), DrawRole.AID
+        ),
+    ]
+    syrup.record_mixture(
+        season.context(row), kind=StepKind.FILTRATION, at=at, machine=season.place("Press"),
+        sources=[FromVessel(season.place("Batch tank")), *aids],
+        into=season.place("Filtered tank"), item=season.item("Syrup"),
+        amount=measure(row["amount"]), brix=density(row["brix"]),
+        detail={"clarity": row["clarity"], "filter": "press"},
+    )  # fmt: skip
+
+
+def _drums(season: Season, row: dict[str, Any], at: datetime) -> None:
+    drums = [
+        syrup.Drum(
+            season.place(drum["vessel"]),
+            Typed(Decimal(drum["amount"]), "US gal"),
+            Typed(Decimal(drum["fill"]), "°F"),
+            drum["seal"],
+        )  # fmt: skip
+        for drum in row["drums"]
+    ]
+    syrup.record_drum_fill(
+        season.context(row), at=at, sources=[FromVessel(season.place("Filtered tank"))],
+        drums=drums, item=season.item("Syrup"), brix=density(row["brix"]),
+        transmittance=Typed(Decimal(row["tc"]), "%Tc"),
+    )  # fmt: skip
+
+
+def _blend(season: Season, row: dict[str, Any], at: datetime) -> None:
+    syrup.record_mixture(
+        season.context(row), kind=StepKind.BLEND, at=at, item=season.item("Syrup"),
+        sources=[FromVessel(season.place(name)) for name in row["sources"]],
+        into=season.place(row["into"]), brix=density(row["brix"]),
+    )  # fmt: skip
+
+
+def _bottle(season: Season, row: dict[str, Any], at: datetime) -> None:
+    syrup.record_mixture(
+        season.context(row), kind=StepKind.REHEAT, at=at - timedelta(hours=0.5),
+        sources=[FromVessel(season.place(row["drum"]))], into=season.place("Canner"),
+        item=season.item("Syrup"),
+    )  # fmt: skip
+    used = [row["container"], "Closure", "Label, amber, version 3"]
+    run = container_fill.Run(
+        product=season.item(row["product"]), made=row["made"], rejected=row["rejected"],
+        into=season.place("Store"), brix=density(row["brix"]),
+        fill_temperatures=[Typed(Decimal(one), "°F") for one in row["temps"]],
+        transmittance=Typed(Decimal(row["tc"]), "%Tc"),
+        best_before=(at + timedelta(days=730)).date(),
+        packaging=[container_fill.Packaging(season.material(name)) for name in used],
+    )  # fmt: skip
+    step = container_fill.record_container_fill(
+        season.context(row), at=at, sources=[FromVessel(season.place("Canner"))], run=run
+    )
+    season.tags[row["tag"]] = step.made_lots.get()
+
+
+def _resolve(season: Season, row: dict[str, Any], at: datetime) -> None:
+    lot, lead = season.tags[row["tag"]], season.context(row, "lead")
+    for hold in Hold.objects.filter(lot=lot, ended_at=None):
+        for action in hold.actions.all():
+            decisions.complete_action(
+                lead, action=action, cause="The canner's thermostat had been turned down.",
+                correction="The jars are opened back to bulk and heated again.",
+                prevention="The setting is read and noted before the first jar.",
+                evaluation="Filled too cool to keep; none was sold.",
+            )  # fmt: skip
+    upkeep.record_rework(
+        season.context(row), at=at, lot=lot, amount=NOT_MEASURED,
+        into=season.place("Batch tank 2"), item=season.item("Syrup"),
+    )  # fmt: skip
+
+
+def _sell(season: Season, row: dict[str, Any], at: datetime) -> None:
+    lot = season.tags[row["tag"]]
+    if not upkeep.released(Lot.objects.get(pk=lot.pk)):
+        shown = decisions.shown_hash(Lot.objects.get(pk=lot.pk))
+        decisions.release_lot(
+            season.context(row, "lead"), lot=lot, shown=shown,
+            reason="A second reading by the lead agrees with the first.",
+        )  # fmt: skip
+    customer = season.partner(row["customer"]) if row["customer"] else None
+    season.sales[row["tag"]] = goods_out.record_sale(
+        season.context(row), at=at, customer=customer, document=row["document"],
+        sold=[FromLot(lot, Typed(Decimal(row["amount"]), "pieces"))],
+    )  # fmt: skip
+
+
+def _return(season: Season, row: dict[str, Any], at: datetime) -> None:
+    goods_out.record_customer_return(
+        season.context(row), at=at, sale=season.sales[row["tag"]], lot=season.tags[row["tag"]],
+        amount=Typed(Decimal(row["amount"]), "pieces"), into=season.place("Store"),
+        reason=row["reason"],
+    )  # fmt: skip
+
+
+def _void(season: Season, row: dict[str, Any], at: datetime) -> None:
+    sold = [FromLot(season.tags[row["tag"]], Typed(Decimal(row["amount"]), "pieces"))]
+    wrong = goods_out.record_sale(season.context(row), at=at, sold=sold)
+    decisions.void_step(
+        season.context(row, "lead"), step=wrong, reason="Entered as a counter sale; it was not."
+    )
+    goods_out.record_sale(
+        season.context(row), at=at, sold=sold, customer=season.partner(row["customer"])
+    )
+
+
+def _supplier_return(season: Season, row: dict[str, Any], at: datetime) -> None:
+    lot = Lot.objects.get(facility=season.facility, supplier_code=row["code"])
+    receiving.record_supplier_return(
+        season.context(row), at=at, lot=lot, amount=NOT_MEASURED, reason="Rejected on receipt"
+    )
+
+
+def _release_opening(season: Season, row: dict[str, Any], at: datetime) -> None:
+    lot = Lot.objects.get(facility=season.facility, code=row["code"])
+    decisions.release_lot(
+        season.context(row, "lead"), lot=lot, shown=decisions.shown_hash(lot),
+        reason="Tasted and read against the cellar card.",
+    )  # fmt: skip
+
+
+def _remove(season: Season, row: dict[str, Any], at: datetime) -> None:
+    goods_out.record_removal(
+        season.context(row), at=at, lot=season.tags[row["tag"]], reason=row["reason"],
+        amount=Typed(Decimal(row["amount"]), "pieces"),
+    )  # fmt: skip
+
+
+ACTS: dict[str, Callable[[Season, dict[str, Any], datetime], None]] = {
+    "blend": _blend,
+    "boil": _boil,
+    "bottle": _bottle,
+    "clean": _clean,
+    "collect": _collect,
+    "drums": _drums,
+    "filter": _filter,
+    "open-boil": _open_boil,
+    "opening": _opening,
+    "receive": _receive,
+    "release-opening": _release_opening,
+    "remove": _remove,
+    "resolve-hold": _resolve,
+    "return": _return,
+    "ro": _concentrate,
+    "sell": _sell,
+    "supplier-return": _supplier_return,
+    "void-and-again": _void,
+}
