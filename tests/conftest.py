@@ -10,7 +10,8 @@ from hypothesis import settings as hypothesis_settings
 
 from tests import factories
 
-hypothesis_settings.register_profile("ci", max_examples=50, derandomize=True, deadline=None)
+EXAMPLES = int(os.environ.get("SUGARHOUSE_EXAMPLES", "50"))
+hypothesis_settings.register_profile("ci", max_examples=EXAMPLES, derandomize=True, deadline=None)
 hypothesis_settings.load_profile("ci")
 
 

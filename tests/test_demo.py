@@ -3,11 +3,12 @@
 from datetime import UTC, datetime
 
 import pytest
+from django.db import connection
 from django.db.models import Sum
 
 from lots.management import season
 from lots.models import Draw, Hold, JournalEntry, Lot, Step, StepKind
-from lots.tracing import story, verify
+from lots.tracing import cone, story, verify
 
 pytestmark = pytest.mark.django_db
 
@@ -38,3 +39,11 @@ def test_the_season_loads_verifies_and_balances():
     assert told.woods == ["North woods", "South woods"]
     assert "Ridge Filter Supply" in told.suppliers
     assert told.accounting.unexplained == 0
+    if connection.vendor == "sqlite":
+        with connection.cursor() as cursor:
+            cursor.execute("ANALYZE")
+        for plan in (cone.plan(cone.back_sql(), 1), cone.plan(cone.forward_sql(), 1, 1)):
+            draws = [line for line in plan if " d " in line]
+            assert draws
+            assert all(line.startswith("SEARCH d USING INDEX draw_") for line in draws)
+            assert not any("BLOOM" in line for line in plan)

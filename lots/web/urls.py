@@ -3,7 +3,7 @@
 from django.contrib.auth import views as auth
 from django.urls import path
 
-from .views import browse, decide, record
+from .views import browse, decide, packet, record
 
 urlpatterns = [
     path("", browse.home, name="home"),
@@ -16,6 +16,7 @@ urlpatterns = [
     path("f/<slug:slug>/lots/<uuid:uuid>/", browse.lot, name="lot"),
     path("f/<slug:slug>/lots/<uuid:uuid>/hold/", decide.hold, name="hold"),
     path("f/<slug:slug>/lots/<uuid:uuid>/release/", decide.release, name="release"),
+    path("f/<slug:slug>/lots/<uuid:uuid>/packet.<slug:form>", packet.lot_packet, name="packet"),
     path("f/<slug:slug>/holds/<uuid:uuid>/", decide.decide, name="decide"),
     path("f/<slug:slug>/record/<slug:kind>/", record.record, name="record"),
     path("f/<slug:slug>/steps/<uuid:uuid>/", record.step, name="step"),

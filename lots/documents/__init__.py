@@ -1,0 +1,1 @@
+"""Packets and papers: rendering only, from plain data."""

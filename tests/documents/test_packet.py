@@ -1,0 +1,63 @@
+"""The packet: every number in PDF, spreadsheet and page agrees, and text stays text."""
+
+import io
+
+import pytest
+from django.urls import reverse
+from openpyxl import load_workbook
+
+from lots.documents import packet, packet_pdf, packet_xlsx
+from lots.recording import goods_out
+from lots.recording._sources import FromLot
+from tests.factories import pieces
+
+pytestmark = pytest.mark.django_db
+
+
+@pytest.fixture
+def made(house):
+    jars = house.jars(density="66.4")
+    house.facility.refresh_from_db()
+    return packet.build(house.facility, [jars], house.at(9))
+
+
+def test_the_workbook_holds_the_packets_rows(made):
+    book = load_workbook(io.BytesIO(packet_xlsx.xlsx(made)))
+
+    for sheet in made.sheets:
+        rows = [tuple(cell or "" for cell in row) for row in book[sheet.title].values]
+        assert rows == [sheet.heads, *sheet.rows]
+
+
+def test_the_page_says_what_was_found_and_to_whom_it_went(made):
+    text = packet_pdf.html(made)
+    assert "below the minimum of 66.9 °Brix" in text
+    assert "DE-77" in text
+    assert made.chain_head in text
+    assert "Vermont Agency of Agriculture" in text
+
+
+def test_the_same_packet_gives_the_same_pdf(made):
+    first = packet_pdf.pdf(made)
+    assert first.startswith(b"%PDF")
+    assert packet_pdf.pdf(made) == first
+
+
+def test_a_formula_in_a_document_number_stays_text(house):
+    jars = house.jars()
+    goods_out.record_sale(
+        house.context(hours=7), at=house.at(7), sold=[FromLot(jars, pieces(1))],
+        customer=house.customer, document='=HYPERLINK("x")',
+    )  # fmt: skip
+    made = packet.build(house.facility, [jars], house.at(9))
+    book = load_workbook(io.BytesIO(packet_xlsx.xlsx(made)))
+    kinds = {cell.data_type for row in book["Trace forward"].iter_rows() for cell in row}
+    assert kinds <= {"s", "inlineStr", "n"}
+
+
+@pytest.mark.parametrize("form", ["pdf", "xlsx", "html"])
+def test_an_inspector_takes_the_packet(client, house, form):
+    jars = house.jars()
+    client.force_login(house.inspector)
+    answer = client.get(reverse("packet", args=[house.facility.slug, jars.uuid, form]))
+    assert answer.status_code == 200
