@@ -312,6 +312,11 @@ def _resolve(season: Season, row: dict[str, Any], at: datetime) -> None:
         season.context(row), at=at, lot=lot, amount=NOT_MEASURED,
         into=season.place("Batch tank 2"), item=season.item("Syrup"),
     )  # fmt: skip
+    for hold in Hold.objects.filter(lot=lot, ended_at=None):
+        decisions.decide_hold(
+            lead, hold=hold, decision="reject", reason="Reworked; not sold as filled.",
+            shown=decisions.shown_hash(Lot.objects.get(pk=lot.pk)),
+        )  # fmt: skip
 
 
 def _sell(season: Season, row: dict[str, Any], at: datetime) -> None:

@@ -5,14 +5,16 @@ from typing import Any
 from django.http import HttpRequest
 from django.urls import reverse
 
+from lots.rules.roles import Action, Role, may
+
 PAGES = (
-    ("Today", "today"),
-    ("Lots", "lots"),
-    ("Vessels", "vessels"),
-    ("Trace", "trace"),
-    ("People", "people"),
-    ("Rules", "rules"),
-    ("Journal", "journal"),
+    ("Today", "today", Action.VIEW),
+    ("Lots", "lots", Action.VIEW),
+    ("Vessels", "vessels", Action.VIEW),
+    ("Trace", "trace", Action.TRACE),
+    ("People", "people", Action.MANAGE_PEOPLE),
+    ("Rules", "rules", Action.VIEW),
+    ("Journal", "journal", Action.VIEW),
 )
 
 
@@ -21,10 +23,15 @@ def navigation(request: HttpRequest) -> dict[str, Any]:
     facility = getattr(request, "facility", None)
     if facility is None:
         return {}
-    links = [(label, reverse(name, args=[facility.slug])) for label, name in PAGES]
+    member = request.member  # type: ignore[attr-defined]
+    links = [
+        (label, reverse(name, args=[facility.slug]))
+        for label, name, action in PAGES
+        if may(Role(member.role), action)
+    ]
     return {
         "facility": facility,
-        "member": request.member,  # type: ignore[attr-defined]
+        "member": member,
         "nav": [(label, url, request.path == url) for label, url in links],
         "regulators_url": reverse("rules", args=[facility.slug]),
     }

@@ -48,6 +48,13 @@ class RecordForm(forms.Form):
     def build(self, facility: Facility) -> None:
         """Add the fields whose choices depend on the facility."""
 
+    @property
+    def fieldsets(self) -> list[tuple[str, list[str], bool]]:
+        """Return the groups a page shows: the numbers first, the rest folded under "More"."""
+        shown = [name for name in self.fields if name not in self.folded and name != "client_id"]
+        rest = [name for name in self.fields if name in self.folded]
+        return [("", shown, False), *([("More", rest, True)] if rest else [])]
+
     def clean(self) -> dict[str, Any]:
         """Refuse text that no database and no paper can hold."""
         cleaned: dict[str, Any] = super().clean() or {}

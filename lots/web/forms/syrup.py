@@ -147,7 +147,10 @@ class ContainerFillForm(fields.DensityFields, SourceFields):
     )
     transmittance = fields.MeasureField(["%Tc"], "Colour at 560 nm")
     people = forms.CharField(label="People", required=False, max_length=200)
-    folded = ("device", "container", "closure", "label", "people")
+    folded = (
+        "device", "rejected", "printed_code", "best_before", "container", "closure", "label",
+        "people",
+    )  # fmt: skip
 
     def build(self, facility: Facility) -> None:
         """Offer products, stock and stores."""
@@ -164,7 +167,21 @@ class ContainerFillForm(fields.DensityFields, SourceFields):
                 fields.lots_in_stock(facility, kind), required=False, label=f"{kind.label} lot"
             )
         self.order_fields(
-            ("at", "product", "made", "source", "taken", "fill_1", "fill_2", "fill_3", "brix")
+            (
+                "at",
+                "product",
+                "made",
+                "source",
+                "taken",
+                "emptied",
+                "fill_1",
+                "fill_2",
+                "fill_3",
+                "brix",
+                "sample_temperature",
+                "transmittance",
+                "into",
+            )  # fmt: skip
         )
 
     def record(self, context: Context) -> Step:
