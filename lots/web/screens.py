@@ -2,7 +2,7 @@
 
 from lots.models import StepKind
 
-from .forms import sap, syrup
+from .forms import handling, sap, syrup
 from .forms.base import RecordForm
 
 SCREENS: dict[str, type[RecordForm]] = {
@@ -15,6 +15,18 @@ SCREENS: dict[str, type[RecordForm]] = {
     StepKind.SALE.value: syrup.SaleForm,
     StepKind.RECEIVING.value: syrup.ReceivingForm,
     StepKind.CLEANING.value: syrup.CleaningForm,
+    StepKind.GRADE_READING.value: handling.GradeForm,
+    StepKind.BLEND.value: handling.BlendForm,
+    StepKind.TRANSFER.value: handling.TransferForm,
+    StepKind.REHEAT.value: handling.ReheatForm,
+    StepKind.MOVE.value: handling.MoveForm,
+    StepKind.SPLIT.value: handling.SplitForm,
+    StepKind.REMOVAL.value: handling.RemovalForm,
+    StepKind.REWORK.value: handling.ReworkForm,
+    StepKind.ADJUSTMENT.value: handling.CountForm,
+    StepKind.CUSTOMER_RETURN.value: handling.CustomerReturnForm,
+    StepKind.SUPPLIER_RETURN.value: handling.SupplierReturnForm,
+    StepKind.OPENING_STOCK.value: handling.OpeningStockForm,
 }
 RUNNING: dict[str, type[RecordForm]] = {
     "feed": sap.FeedForm,

@@ -5,15 +5,12 @@ from uuid import uuid4
 import pytest
 from django.urls import get_resolver, reverse
 
-from lots.models import Hold, Lot, Step
+from lots.models import Hold, Lot, Step, StepKind
+from lots.web.screens import SCREENS
 from tests.factories import sugarhouse
 
 pytestmark = pytest.mark.django_db
 PAGES = ("today", "lots", "vessels", "trace", "rules", "journal")
-SCREENS = (
-    "collection", "concentration", "boil", "filtration", "drum-fill", "container-fill", "sale",
-    "receiving", "cleaning",
-)  # fmt: skip
 
 
 def url(house, name, *args):
@@ -228,3 +225,23 @@ def test_an_owner_adds_and_disables_a_person(client, house):
     client.force_login(member.user)
     assert client.get(url(house, "today")).status_code == 404
     assert Lot.objects.count() == 0
+
+
+def test_every_kind_of_step_has_its_screen():
+    # What stays in the pans is recorded on the boil's own page, by closing it.
+    assert set(SCREENS) == {kind.value for kind in StepKind} - {StepKind.CONTENTS.value}
+
+
+def test_a_move_typed_in_the_form_changes_the_place(recorder, house):
+    jars = house.jars()
+    answer = recorder.post(
+        url(house, "record", "move"),
+        {
+            "client_id": uuid4(), "at": "2026-04-02T22:00", "lot": jars.pk, "amount_0": "5",
+            "amount_1": "pieces", "come_from": house.places["Store"].pk,
+            "to": house.places["Drum 2"].pk,
+        },
+    )  # fmt: skip
+
+    assert answer.status_code == 302
+    assert jars.stock.get(place=house.places["Drum 2"]).quantity == 5
