@@ -22,6 +22,7 @@ urlpatterns = [
     path("f/<slug:slug>/steps/<uuid:uuid>/", record.step, name="step"),
     path("f/<slug:slug>/steps/<uuid:uuid>/void/", decide.void, name="void"),
     path("f/<slug:slug>/steps/<uuid:uuid>/<slug:act>/", record.running, name="running"),
+    path("f/<slug:slug>/unposted/<uuid:uuid>/", decide.settle, name="settle"),
     path("f/<slug:slug>/vessels/", browse.vessels, name="vessels"),
     path("f/<slug:slug>/trace/", browse.trace, name="trace"),
     path("f/<slug:slug>/people/", decide.people, name="people"),

@@ -245,3 +245,26 @@ def test_a_move_typed_in_the_form_changes_the_place(recorder, house):
 
     assert answer.status_code == 302
     assert jars.stock.get(place=house.places["Drum 2"]).quantity == 5
+
+
+def test_an_act_that_happened_is_kept_and_settled(client, house):
+    jars = house.jars()
+    client.force_login(house.recorder)
+    form = {
+        "client_id": uuid4(), "at": "2026-04-02T22:00", "lot": jars.pk, "quantity_0": "900",
+        "quantity_1": "pieces",
+    }  # fmt: skip
+    refused = client.post(url(house, "record", "sale"), form)
+    assert refused.status_code == 422
+    assert "It has already happened" in refused.content.decode()
+
+    client.post(url(house, "record", "sale"), {**form, "happened": "1"})
+
+    entry = house.facility.unposted.get()
+    assert list(entry.lots.all()) == [jars]
+    assert entry.typed["quantity_0"] == "900"
+    client.force_login(house.lead)
+    assert "not posted" in client.get(url(house, "today")).content.decode()
+    client.post(url(house, "settle", entry.uuid), {"settled_as": "voided", "reason": "miscounted"})
+    entry.refresh_from_db()
+    assert entry.settled_as == "voided"

@@ -29,6 +29,7 @@ class RecordForm(forms.Form):
     verb = "Record"
     caution = ""
     folded: tuple[str, ...] = ()
+    refused = False
     client_id = forms.UUIDField(widget=forms.HiddenInput)
     at = forms.DateTimeField(
         label="When",
@@ -89,4 +90,5 @@ class RecordForm(forms.Form):
 
     def refuse(self, error: RecordingError) -> None:
         """Put a refusal beside its field, keeping all that was typed."""
+        self.refused = True
         self.add_error(error.field if error.field in self.fields else None, error.message)

@@ -7,7 +7,7 @@ from django.http import HttpRequest, HttpResponse
 from django.shortcuts import get_object_or_404, redirect, render
 from django.views.decorators.http import require_POST
 
-from lots.models import Hold, Membership
+from lots.models import Hold, Membership, UnpostedEntry
 from lots.recording import decisions, setup
 from lots.recording.errors import RecordingError
 from lots.rules.roles import Action, Role
@@ -78,6 +78,23 @@ def release(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     else:
         messages.success(request, f"{lot.code} is released.")
     return redirect("lot", slug, lot.uuid)
+
+
+@allow(Action.AMEND)
+@require_POST
+def settle(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
+    """End an unposted entry with a reason."""
+    entry = get_object_or_404(UnpostedEntry, facility=facility_of(request), uuid=uuid)
+    try:
+        decisions.settle_unposted(
+            context_of(request), entry=entry, settled_as=_said(request, "settled_as"),
+            reason=_said(request, "reason"),
+        )  # fmt: skip
+    except RecordingError as error:
+        messages.error(request, error.message)
+    else:
+        messages.success(request, "Settled.")
+    return redirect("today", slug)
 
 
 @allow(Action.VOID)

@@ -6,6 +6,8 @@ from django.contrib import messages
 from django.http import Http404, HttpRequest, HttpResponse
 from django.shortcuts import redirect, render
 
+from lots.models import Lot
+from lots.recording import decisions
 from lots.recording._door import AlreadyRecorded
 from lots.recording.errors import RecordingError
 from lots.rules.roles import Action
@@ -30,11 +32,32 @@ def record(request: HttpRequest, slug: str, kind: str) -> HttpResponse:
                 return redirect("today", slug)
             return redirect("step", slug, answer.step.uuid)
         except RecordingError as error:
+            if "happened" in request.POST:
+                return _keep(request, slug, kind, form, error)
             form.refuse(error)
         else:
             messages.success(request, f"Recorded: {step}.")
             return redirect("step", slug, step.uuid)
     return _show(request, form)
+
+
+def _keep(
+    request: HttpRequest, slug: str, kind: str, form: RecordForm, error: RecordingError
+) -> HttpResponse:
+    """Keep a refused act that has already happened, until a lead settles it."""
+    lots = [value for value in form.cleaned_data.values() if isinstance(value, Lot)]
+    hidden = ("csrfmiddlewaretoken", "happened")
+    typed = {key: str(value) for key, value in request.POST.items() if key not in hidden}
+    decisions.keep_unposted(
+        context_of(request, form.client()),
+        kind=kind,
+        happened_at=form.moment,
+        typed=typed,
+        reason=error.message,
+        lots=lots,
+    )
+    messages.success(request, "Kept on the server, not posted: a lead settles it from Today.")
+    return redirect("today", slug)
 
 
 @allow(Action.RECORD)
@@ -60,7 +83,9 @@ def running(request: HttpRequest, slug: str, uuid: UUID, act: str) -> HttpRespon
 
 def _show(request: HttpRequest, form: RecordForm) -> HttpResponse:
     status = 422 if form.errors else 200
-    return render(request, "lots/record.html", {"form": form, "title": form.title}, status=status)
+    refused = bool(form.errors) and form.is_bound and form.refused
+    context = {"form": form, "title": form.title, "refused": refused}
+    return render(request, "lots/record.html", context, status=status)
 
 
 @allow(Action.VIEW)
