@@ -123,6 +123,11 @@ def add_item(context: Context, **fields: Any) -> Item:
 
 def add_partner(context: Context, **fields: Any) -> Partner:
     """Register a supplier, customer or carrier; contact data enters the journal hashed."""
+    twins = Partner.objects.filter(
+        facility=context.facility, name=fields["name"], kind=fields["kind"]
+    )
+    if twins.exists():
+        raise RecordingError(f"{fields['name']} is registered already.", field="name")
     return _register(
         context, Partner, "partner added", {"contact_salt": journal.new_salt(), **fields}
     )

@@ -12,6 +12,9 @@ PAGES = (
     ("Lots", "lots", Action.VIEW),
     ("Vessels", "vessels", Action.VIEW),
     ("Trace", "trace", Action.TRACE),
+    ("Places", "register", Action.RECORD, "places"),
+    ("Materials", "register", Action.RECORD, "materials"),
+    ("Partners", "register", Action.RECORD, "partners"),
     ("People", "people", Action.MANAGE_PEOPLE),
     ("Rules", "rules", Action.VIEW),
     ("Journal", "journal", Action.VIEW),
@@ -25,8 +28,8 @@ def navigation(request: HttpRequest) -> dict[str, Any]:
         return {}
     member = request.member  # type: ignore[attr-defined]
     links = [
-        (label, reverse(name, args=[facility.slug]))
-        for label, name, action in PAGES
+        (label, reverse(name, args=[facility.slug, *rest]))
+        for label, name, action, *rest in PAGES
         if may(Role(member.role), action)
     ]
     return {

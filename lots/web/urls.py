@@ -3,7 +3,7 @@
 from django.contrib.auth import views as auth
 from django.urls import path
 
-from .views import browse, decide, packet, record
+from .views import browse, decide, packet, record, registers
 
 urlpatterns = [
     path("", browse.home, name="home"),
@@ -23,6 +23,7 @@ urlpatterns = [
     path("f/<slug:slug>/steps/<uuid:uuid>/void/", decide.void, name="void"),
     path("f/<slug:slug>/steps/<uuid:uuid>/<slug:act>/", record.running, name="running"),
     path("f/<slug:slug>/unposted/<uuid:uuid>/", decide.settle, name="settle"),
+    path("f/<slug:slug>/registers/<slug:name>/", registers.register, name="register"),
     path("f/<slug:slug>/vessels/", browse.vessels, name="vessels"),
     path("f/<slug:slug>/trace/", browse.trace, name="trace"),
     path("f/<slug:slug>/people/", decide.people, name="people"),

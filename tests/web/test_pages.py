@@ -268,3 +268,27 @@ def test_an_act_that_happened_is_kept_and_settled(client, house):
     client.post(url(house, "settle", entry.uuid), {"settled_as": "voided", "reason": "miscounted"})
     entry.refresh_from_db()
     assert entry.settled_as == "voided"
+
+
+@pytest.mark.parametrize(
+    ("name", "typed"),
+    [
+        ("places", {"name": "Tank 9", "kind": "tank"}),
+        ("materials", {"name": "Pint jug", "kind": "container", "counted": "on"}),
+        ("partners", {"name": "Hill Inn (fictional)", "kind": "customer"}),
+    ],
+)
+def test_a_register_takes_a_new_row_once(recorder, house, name, typed):
+    page = url(house, "register", name)
+    assert recorder.post(page, typed).status_code == 302
+    assert typed["name"] in recorder.get(page).content.decode()
+    if name != "partners":
+        assert recorder.post(page, typed).status_code == 422
+
+
+def test_a_wrong_gtin_is_refused(recorder, house):
+    # GS1's own example: 629104150021 has the check digit 3 (MEMORY).
+    typed = {"name": "Amber pint", "kind": "packed", "size_value": "1", "size_unit": "pt"}
+    page = url(house, "register", "materials")
+    assert recorder.post(page, {**typed, "gtin": "6291041500214"}).status_code == 422
+    assert recorder.post(page, {**typed, "gtin": "6291041500213"}).status_code == 302
