@@ -34,9 +34,8 @@ _FACTORS: dict[str, tuple[str, Decimal]] = {
     "inHg": ("pressure", _INCH_OF_MERCURY),
     "kPa": ("pressure", Decimal(1)),
     "psi": ("pressure", _POUND_PER_SQUARE_INCH),
-    "°F": ("temperature", Decimal(5) / 9),
-    "°C": ("temperature", Decimal(1)),
 }
+TEMPERATURE = ("°F", "°C")
 
 
 def _codes(kind: str) -> tuple[str, ...]:
@@ -45,12 +44,13 @@ def _codes(kind: str) -> tuple[str, ...]:
 
 VOLUME = _codes("volume")
 MASS = _codes("mass")
-TEMPERATURE = _codes("temperature")
 PRESSURE = _codes("pressure")
 
 
 def dimension(unit: str) -> str:
     """Return volume, mass, pressure or temperature; raises UnitError for an unknown unit."""
+    if unit in TEMPERATURE:
+        return "temperature"
     if unit not in _FACTORS:
         raise UnitError(f"{unit} is not a unit this book knows.")
     return _FACTORS[unit][0]

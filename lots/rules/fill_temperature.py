@@ -4,36 +4,33 @@ from decimal import Decimal
 
 from lots.quantities.units import convert
 
-from .density import rounded
 from .rule_set import RuleSet
-from .verdict import Outcome, Stage, Verdict
+from .verdict import Stage, Verdict, judged, not_set, of_limit, rounded
 
 BORDER_FAHRENHEIT = Decimal(1)
+# A difference of 1 °F; a conversion of the point 1 °F would be −17 °C.
+_BORDERS = {"°F": BORDER_FAHRENHEIT, "°C": BORDER_FAHRENHEIT * 5 / 9}
+KINDS = ("container", "drum")
 
 
-def check(rules: RuleSet, kind: str, stage: Stage, celsius: float) -> Verdict:
-    """Judge a fill temperature in °C, for a ``container`` or a ``drum``, in the limit's unit."""
-    limit = rules.limit(f"{kind}-fill-min")
+def check(rule_set: RuleSet, container_kind: str, stage: Stage, celsius: float) -> Verdict:
+    """Judge a fill temperature in °C, for a ``container`` or a ``drum``, in the limit's unit.
+
+    The value is rounded once, half to even, to one decimal more than the limit has; within 1 °F of
+    the limit is borderline. Raises ValueError for another kind or no finite number.
+    """
+    if container_kind not in KINDS:
+        raise ValueError(f"{container_kind} is neither a container nor a drum.")
+    limit = rule_set.limit(f"{container_kind}-fill-min")
     if limit is None:
-        return Verdict(
-            "fill-temperature", stage, Outcome.NOT_SET, "fill-not-set", {}, "", "", rules.name, ""
-        )
-    value = rounded(float(convert(Decimal(str(celsius)), "°C", limit.unit)), limit.value)
-    border = BORDER_FAHRENHEIT if limit.unit == "°F" else BORDER_FAHRENHEIT * 5 / 9
-    passed = value >= Decimal(limit.value)
-    near = abs(value - Decimal(limit.value)) <= border
-    # A fill at the minimum meets it: the limit is itself set with a margin over the temperatures
-    # that moulds survive, so nearness is noted on failures only.
-    missed = Outcome.BORDERLINE_FAIL if near else Outcome.FAIL
-    outcome = Outcome.PASS if passed else missed
-    return Verdict(
+        return not_set(rule_set, "fill-temperature", stage)
+    value = rounded(convert(Decimal(str(celsius)), "°C", limit.unit), limit.value)
+    passed = value >= limit.number
+    return of_limit(
         "fill-temperature",
         stage,
-        outcome,
-        "fill-pass" if passed else "fill-low",
-        {"value": str(value), "limit": limit.value, "unit": limit.unit, "source": limit.source},
-        limit.value,
-        limit.unit,
-        limit.source,
-        limit.mark,
+        judged(passed, near=abs(value - limit.number) <= _BORDERS[limit.unit]),
+        "fill-temperature-pass" if passed else "fill-temperature-low",
+        limit,
+        {"value": str(value), "kind": container_kind},
     )
