@@ -5,8 +5,10 @@ from uuid import UUID
 from django.contrib.auth.decorators import login_required
 from django.http import HttpRequest, HttpResponse
 from django.shortcuts import redirect, render
+from django.utils.safestring import mark_safe
 from django_tables2 import RequestConfig
 
+from lots.documents import picture
 from lots.models import Hold, JournalEntry, Lot, Membership, Place, Step
 from lots.recording import decisions
 from lots.rules import rule_set
@@ -75,6 +77,7 @@ def lot(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
         "title": found.code,
         "sentence": lot_sentence(told),
         "story": told,
+        "picture": mark_safe(picture.svg(told)),  # noqa: S308 - escaped where it is made
         "back": _rows(told, told.back.links),
         "ahead": _rows(told, told.forward.links),
         "checks": found.checks.select_related("reading"),
