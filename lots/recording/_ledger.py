@@ -289,6 +289,8 @@ def take_from_vessel(
         raise NotEnough(f"{vessel.name} is empty by the book.", field="vessel")
     known = [row for row in held if row.lot.made is not None]
     book = sum(row.quantity for row in known)
+    if mass is not None and abs(mass - book) * 1000 <= book:
+        mass = None  # the same volume typed twice differs by its rounding alone: it is all of it
     wanted = book if mass is None else mass
     if mass is not None and (emptied or wanted > book) and known:
         _book_difference(writer, vessel, known, wanted - book, emptied or accept_difference)

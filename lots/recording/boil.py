@@ -25,7 +25,7 @@ from lots.models import (
 )
 from lots.rules.verdict import Stage
 
-from . import _judge, _ledger, _sources
+from . import _judge, _ledger, _residue, _sources
 from ._door import Writer
 from .context import Context
 from .errors import NotEnough, RecordingError
@@ -82,7 +82,9 @@ def open_boil(
                     )
                 ],
             )
-        for row in _ledger.contents(evaporator):
+        held = _ledger.contents(evaporator)
+        _residue.of_vessel(writer, step, evaporator)
+        for row in held:
             quantity = None if row.lot.made is None else row.quantity
             _ledger.take(writer, step, row.lot, quantity, DrawRole.CARRY_OVER, place=evaporator)
             Stock.objects.filter(pk=row.pk).delete()
@@ -234,6 +236,7 @@ def _draw_off(writer: Writer, boil: Step, item: Item, draw: DrawOff) -> Lot:
     mass, solids = liquid.milligrams(), liquid.solids()
     lot = Lot.objects.filter(made_by=boil, item=item, stock__place=draw.into).first()
     if lot is None:
+        _residue.of_vessel(writer, boil, draw.into)
         lot = _ledger.make(
             writer,
             boil,

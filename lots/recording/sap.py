@@ -5,7 +5,7 @@ from datetime import datetime
 
 from lots.models import Item, ItemKind, Place, Step, StepKind
 
-from . import _judge, _ledger, _sources
+from . import _judge, _ledger, _residue, _sources
 from ._door import Writer
 from .context import Context
 from .errors import RecordingError
@@ -47,6 +47,7 @@ def record_collection(
                 "temperature_unit": temperature.unit,
             },
         )
+        _residue.of_vessel(writer, step, tank)
         liquid = Liquid(amount, brix.true_brix() if brix else None, temperature)
         lot = _ledger.make(
             writer,
@@ -95,6 +96,8 @@ def record_concentration(
             StepKind.CONCENTRATION, at, ended_at=ended_at, place=machine, note=note, detail=detail
         )
         taken = _sources.draw(writer, step, sources)
+        _residue.of_vessel(writer, step, into)
+        _residue.of_machine(writer, step, machine)
         _concentrate(writer, step, item, into, taken, amount, brix)
         return step
 

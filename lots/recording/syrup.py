@@ -8,7 +8,7 @@ from lots.models import GoodsKind, Item, Lot, LotState, Place, ReadingKind, Step
 from lots.physics import colour
 from lots.rules.verdict import Stage
 
-from . import _judge, _ledger, _sources
+from . import _judge, _ledger, _residue, _sources
 from ._door import Writer
 from .context import Context
 from .errors import RecordingError
@@ -49,6 +49,9 @@ def record_mixture(
             kind, at, ended_at=ended_at or at, place=machine or into, note=note, detail=detail or {}
         )
         taken = _sources.draw(writer, step, sources)
+        _residue.of_vessel(writer, step, into)
+        if machine is not None:
+            _residue.of_machine(writer, step, machine)
         true = brix.true_brix() if brix else _sources.brix_of(taken)
         measured = Liquid(amount, true)
         mass = measured.milligrams()
@@ -131,6 +134,7 @@ def _fill_drum(
     brix: DensityReading | None,
     transmittance: Typed,
 ) -> Lot:
+    _residue.of_vessel(writer, step, drum.vessel)
     liquid = Liquid(drum.amount, true)
     lot = _ledger.make(
         writer,

@@ -38,7 +38,7 @@ TEMPLATES = {
     "loss-gain": "Solids out exceed solids in by {value} %: check the readings and quantities",
     "loss-not-set": "No loss band is set for this step or nothing was measured going in",
 }
-BORDERLINE = " (borderline: within the uncertainty of the reading)"
+BORDERLINE = "; borderline, within the uncertainty of the reading"
 # What the required chain of a lot still lacks, in words.
 REQUIREMENTS = {
     "collected": "a sap collection behind it",

@@ -11,20 +11,13 @@ from dataclasses import dataclass
 
 from django.db import connection
 
+_MATTER = ("ingredient", "carry-over", "returned", "between-facilities")
+_OUT = ("shipped", "removed")
+_AROUND = ("aid", "packaging", "cleaning")
 FOLLOW = {
-    "composition": ("ingredient", "carry-over", "returned", "between-facilities"),
-    "all": (
-        "ingredient",
-        "aid",
-        "packaging",
-        "cleaning",
-        "carry-over",
-        "residue",
-        "returned",
-        "shipped",
-        "removed",
-        "between-facilities",
-    ),
+    "composition": (*_MATTER, *_OUT),
+    "with-aids": (*_MATTER, *_OUT, *_AROUND),
+    "all": (*_MATTER, *_OUT, *_AROUND, "residue"),
 }
 
 
