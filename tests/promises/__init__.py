@@ -1,0 +1,1 @@
+"""What could break the promises made of the ledger, tried on the real tables."""
