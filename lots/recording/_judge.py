@@ -1,14 +1,16 @@
 """What the rules find in a record's readings, and what follows: checks, holds, release."""
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 from decimal import Decimal
 from typing import Any
 
 from lots.models import (
     Check,
     CorrectiveAction,
+    DrawRole,
     GoodsKind,
     Hold,
+    ItemKind,
     Lot,
     LotState,
     Reading,
@@ -17,14 +19,25 @@ from lots.models import (
     StepKind,
 )
 from lots.quantities.rounding import fixed
-from lots.rules import completeness, density, fill_temperature, grade, rule_set, words
-from lots.rules.verdict import Stage, Verdict
+from lots.rules import (
+    completeness,
+    container_size,
+    density,
+    fill_temperature,
+    grade,
+    loss,
+    rule_set,
+    words,
+)
+from lots.rules.verdict import Outcome, Stage, Verdict
 from lots.tracing.cone import back
 
 from ._door import Writer
+from .errors import NotReleased
 from .measures import DensityReading, Observation
 
-PASSED = frozenset({"pass"})
+PASSED = frozenset({Outcome.PASS.value})
+NEAR_OR_PASSED = PASSED | {Outcome.BORDERLINE_PASS.value}
 PROVES = {
     StepKind.COLLECTION: "collected",
     StepKind.BOIL: "boiled",
@@ -80,12 +93,67 @@ def judge(writer: Writer, lot: Lot, stage: Stage, readings: Iterable[Reading]) -
     checks = []
     for reading in readings:
         verdict = _verdict(rules, stage, lot, reading)
-        if verdict is None:
-            continue
-        checks.append(_keep(writer, lot, reading, verdict, rules))
-        if verdict.holds:
-            hold(writer, lot, words.sentence(verdict))
+        if verdict is not None:
+            checks.append(_apply(writer, lot, reading.step, reading, verdict, rules))
     return checks
+
+
+def judge_defects(
+    writer: Writer, lot: Lot, step: Step, stage: Stage, defects: Sequence[tuple[str, str]]
+) -> Check:
+    """Judge the defects a grader listed; an empty list says that none was found."""
+    rules = rule_set.load(writer.facility.rule_set)
+    verdict = grade.check_defects(rules, stage, defects, lot.item.label_grade)
+    return _apply(writer, lot, step, None, verdict, rules)
+
+
+def judge_container_size(writer: Writer, lot: Lot, step: Step) -> Check | None:
+    """Judge whether Processing Grade went into a container large enough for it."""
+    item = lot.item
+    if not item.size_value:
+        return None
+    rules = rule_set.load(writer.facility.rule_set)
+    verdict = container_size.check(
+        rules, Stage.PACKED, item.label_grade, Decimal(item.size_value), item.size_unit
+    )
+    return verdict and _apply(writer, lot, step, None, verdict, rules)
+
+
+def judge_bulk_sale(writer: Writer, lot: Lot, step: Step) -> Check | None:
+    """Judge the last density of bulk syrup that is being sold; raises NotReleased on a fail."""
+    reading = lot.readings.filter(kind=ReadingKind.BRIX).order_by("at", "pk").last()
+    if lot.item.kind != ItemKind.SYRUP or reading is None:
+        return None
+    rules = rule_set.load(writer.facility.rule_set)
+    verdict = density.check(rules, Stage.BULK_SOLD, float(reading.corrected))
+    if verdict.holds:
+        raise NotReleased(f"{lot.code}: {words.sentence(verdict)}", field="lot")
+    return _keep(writer, lot, step, reading, verdict, rules)
+
+
+def judge_loss(writer: Writer, step: Step) -> Check | None:
+    """Judge the solids a step lost against its band: advice, on the first lot it made."""
+    drawn = list(
+        step.draws.filter(ended_at=None, role__in=[DrawRole.INGREDIENT, DrawRole.CARRY_OVER])
+    )
+    made = list(step.made_lots.order_by("pk"))
+    if not made or any(draw.solids is None for draw in drawn):
+        return None
+    if any(lot.solids_made is None for lot in made):
+        return None
+    rules = rule_set.load(writer.facility.rule_set)
+    total_in = sum(draw.solids or 0 for draw in drawn)
+    verdict = loss.check(rules, step.kind, total_in, sum(lot.solids_made or 0 for lot in made))
+    return _apply(writer, made[0], step, None, verdict, rules)
+
+
+def _apply(
+    writer: Writer, lot: Lot, step: Step, reading: Reading | None, verdict: Verdict, rules: Any
+) -> Check:
+    check = _keep(writer, lot, step, reading, verdict, rules)
+    if verdict.holds:
+        hold(writer, lot, check.sentence)
+    return check
 
 
 def _verdict(rules: Any, stage: Stage, lot: Lot, reading: Reading) -> Verdict | None:
@@ -98,14 +166,18 @@ def _verdict(rules: Any, stage: Stage, lot: Lot, reading: Reading) -> Verdict | 
         return grade.check_colour(
             rules, stage, float(Decimal(reading.typed_value)), lot.item.label_grade
         )
+    if reading.kind == ReadingKind.CLARITY:
+        return grade.check_clarity(rules, stage, reading.typed_value, lot.item.label_grade)
     return None
 
 
-def _keep(writer: Writer, lot: Lot, reading: Reading, verdict: Verdict, rules: Any) -> Check:
+def _keep(
+    writer: Writer, lot: Lot, step: Step, reading: Reading | None, verdict: Verdict, rules: Any
+) -> Check:
     return writer.touch(
         Check.objects.create(
             lot=lot,
-            step=reading.step,
+            step=step,
             reading=reading,
             rule=verdict.rule,
             stage=verdict.stage.value,
@@ -161,6 +233,24 @@ def present(lot: Lot) -> set[str]:
     return found
 
 
+def unsettled(lot: Lot) -> list[Check]:
+    """Return the checks that keep a lot from releasing itself.
+
+    A later reading of a rule stands for the earlier ones. A borderline pass counts once a second
+    reading agrees; in process a verdict is advice, and for colour nearness is a mark only.
+    """
+    by_rule: dict[str, dict[int, list[Check]]] = {}
+    for check in lot.checks.exclude(stage=Stage.IN_PROCESS.value).order_by("step_id", "pk"):
+        by_rule.setdefault(check.rule, {}).setdefault(check.step_id, []).append(check)
+    open_checks = []
+    for rule, by_step in by_rule.items():
+        *earlier, last = by_step.values()
+        agreed = bool(earlier) and all(one.outcome in NEAR_OR_PASSED for one in earlier[-1])
+        fine = NEAR_OR_PASSED if rule == "colour" or agreed else PASSED
+        open_checks += [one for one in last if one.outcome not in fine]
+    return open_checks
+
+
 def settle(writer: Writer, lot: Lot) -> Lot:
     """Release a waiting lot whose chain is complete and whose checks all passed."""
     lot = Lot.objects.select_related("made_by", "item").get(pk=lot.pk)
@@ -172,7 +262,7 @@ def settle(writer: Writer, lot: Lot) -> Lot:
         and not writer.facility.release_needs_person
         and not completeness.missing(lot.goods_kind, present(lot))
         and not lot.holds.filter(ended_at=None).exists()
-        and not lot.checks.exclude(outcome__in=PASSED).exclude(rule="colour").exists()
+        and not unsettled(lot)
         and not Step.objects.filter(pk__in=back(lot.made_by_id).steps, ended_at=None).exists()
     )
     state = LotState.RELEASED if ready else LotState.WAITING

@@ -309,6 +309,7 @@ def _close(
             typed_value=stays.text,
             typed_unit=stays.unit,
         )
+    _judge.judge_loss(writer, boil)
     for lot in boil.made_lots.filter(state=LotState.OPEN):
         Lot.objects.filter(pk=lot.pk).update(state=LotState.WAITING)
         writer.touch(lot)

@@ -141,6 +141,7 @@ def _fill(
     readings += _judge.note(writer, step, lot, fill_temperatures(run.fill_temperatures))
     readings += _judge.note(writer, step, lot, colour_reading(run.transmittance))
     _judge.judge(writer, lot, Stage.PACKED, readings)
+    _judge.judge_container_size(writer, lot, step)
     _judge.settle(writer, lot)
     return lot
 

@@ -67,6 +67,7 @@ def record_sale(
             quantity = _sources.pieces_or_milligrams(lot, line.amount)
             if not quantity:
                 raise RecordingError(f"Enter how much of {lot.code} was sold.", field="quantity")
+            _judge.judge_bulk_sale(writer, lot, step)
             _ledger.take(writer, step, lot, quantity, DrawRole.SHIPPED, place=line.place)
         return step
 

@@ -99,6 +99,7 @@ def record_concentration(
         _residue.of_vessel(writer, step, into)
         _residue.of_machine(writer, step, machine)
         _concentrate(writer, step, item, into, taken, amount, brix)
+        _judge.judge_loss(writer, step)
         return step
 
 

@@ -70,6 +70,7 @@ def record_mixture(
         if brix is not None:
             reading = _judge.note_density(writer, step, lot, brix)
             _judge.judge(writer, lot, Stage.IN_PROCESS, [reading])
+        _judge.judge_loss(writer, step)
         return step
 
 
@@ -214,8 +215,10 @@ def record_grade_reading(
         readings = _judge.note(writer, step, lot, seen)
         if brix is not None:
             readings.append(_judge.note_density(writer, step, lot, brix))
-        packed = lot.item.kind == "packed"
-        _judge.judge(writer, lot, Stage.PACKED if packed else Stage.BULK_KEPT, readings)
+        stage = Stage.PACKED if lot.item.kind == "packed" else Stage.BULK_KEPT
+        _judge.judge(writer, lot, stage, readings)
+        if defects or clarity:
+            _judge.judge_defects(writer, lot, step, stage, defects)
         if lot.state == LotState.WAITING:
             _judge.settle(writer, lot)
         return step

@@ -67,16 +67,28 @@ def lots(request: HttpRequest, slug: str) -> HttpResponse:
     return render(request, "lots/lots.html", context)
 
 
+QUESTIONS = {
+    "composition": "What is in it",
+    "with-aids": "What is in it, with aids, packaging and cleaning agents",
+    "all": "What could have touched it, residue included",
+}
+
+
 @allow(Action.VIEW)
 def lot(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     """Show one lot: its story, checks, holds, and where it came from and went."""
     found = get_lot(request, uuid)
-    told = story.tell(found)
+    question = request.GET.get("question", "with-aids")
+    if question not in QUESTIONS:
+        question = "with-aids"
+    told = story.tell(found, question)
     context = {
         "lot": found,
         "title": found.code,
         "sentence": lot_sentence(told),
         "story": told,
+        "questions": QUESTIONS.items(),
+        "question": question,
         "picture": mark_safe(picture.svg(told)),  # noqa: S308 - escaped where it is made
         "back": _rows(told, told.back.links),
         "ahead": _rows(told, told.forward.links),
