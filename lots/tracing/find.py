@@ -1,9 +1,12 @@
 """Find a lot by anything printed or written: its code, the printed code, a supplier's code."""
 
+from datetime import date, datetime, time, timedelta
+from zoneinfo import ZoneInfo
+
 from django.db.models import Q, QuerySet
 
 from lots.identification import lot_code
-from lots.models import Facility, Lot
+from lots.models import Facility, ItemKind, Lot
 
 
 def lots_by_code(facility: Facility, text: str) -> QuerySet[Lot]:
@@ -27,3 +30,18 @@ def nearest(facility: Facility, text: str, limit: int = 8) -> list[Lot]:
         Q(code__istartswith=clean) | Q(printed_code__text__istartswith=clean)
     )
     return list(rows.select_related("item", "printed_code").order_by("-made_at")[:limit])
+
+
+def packed_between(facility: Facility, first: date, last: date) -> QuerySet[Lot]:
+    """Return the packed lots of some days, both included, by the facility's clock."""
+    zone = ZoneInfo(facility.zone)
+    return (
+        Lot.objects.filter(
+            facility=facility,
+            item__kind=ItemKind.PACKED,
+            made_at__gte=datetime.combine(first, time.min, zone),
+            made_at__lt=datetime.combine(last + timedelta(days=1), time.min, zone),
+        )
+        .select_related("item", "printed_code", "made_by__partner")
+        .order_by("made_at", "pk")
+    )

@@ -26,6 +26,7 @@ urlpatterns = [
     path("f/<slug:slug>/registers/<slug:name>/", registers.register, name="register"),
     path("f/<slug:slug>/vessels/", browse.vessels, name="vessels"),
     path("f/<slug:slug>/trace/", browse.trace, name="trace"),
+    path("f/<slug:slug>/packets/", packet.packets, name="packets"),
     path("f/<slug:slug>/people/", decide.people, name="people"),
     path("f/<slug:slug>/people/<uuid:uuid>/", decide.person, name="person"),
     path("f/<slug:slug>/rules/", browse.rules, name="rules"),

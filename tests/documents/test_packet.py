@@ -3,6 +3,7 @@
 import io
 
 import pytest
+from django.core.management import call_command
 from django.urls import reverse
 from openpyxl import load_workbook
 
@@ -61,3 +62,23 @@ def test_an_inspector_takes_the_packet(client, house, form):
     client.force_login(house.inspector)
     answer = client.get(reverse("packet", args=[house.facility.slug, jars.uuid, form]))
     assert answer.status_code == 200
+
+
+def test_a_packet_by_codes_and_days_names_an_unknown_code(client, house):
+    jars = house.jars()
+    client.force_login(house.lead)
+    page = reverse("packets", args=[house.facility.slug])
+    assert client.get(page).status_code == 200
+    unknown = client.get(page, {"codes": "NOPE", "form": "xlsx"})
+    assert unknown.status_code == 422
+    assert "No lot carries NOPE" in unknown.content.decode()
+    by_day = client.get(page, {"first": "2026-04-02", "form": "xlsx"})
+    book = load_workbook(io.BytesIO(by_day.content))
+    assert book["Lots"]["A2"].value == jars.code
+
+
+def test_the_command_writes_both_files(house, tmp_path):
+    jars = house.jars()
+    call_command("packet", jars.code, out=tmp_path, stdout=io.StringIO())
+    assert (tmp_path / "packet.pdf").read_bytes().startswith(b"%PDF")
+    assert load_workbook(tmp_path / "packet.xlsx")["Lots"]["A2"].value == jars.code
