@@ -14,8 +14,9 @@ KEPT_TABLES = (
     "lots_check",
     "lots_hold",
     "lots_printedcode",
+    "lots_amendment",
 )
-NEVER_UPDATED = ("lots_journalentry", "lots_check", "lots_printedcode")
+NEVER_UPDATED = ("lots_journalentry", "lots_check", "lots_printedcode", "lots_amendment")
 
 LOT_FIXED = ("uuid", "facility_id", "code", "item_id", "made_by_id")
 DRAW_FIXED = (

@@ -6,7 +6,7 @@ from .item import LIQUIDS, MATERIALS, Item, ItemKind, PrintedCode, Unit
 from .journal import AccessLog, ClientEntry, JournalEntry
 from .lot import Draw, DrawRole, GoodsKind, Lot, LotState, Stock
 from .place import VESSELS, Instrument, Partner, PartnerKind, Place, PlaceKind
-from .step import MAKERS, Reading, ReadingKind, Step, StepEvent, StepKind
+from .step import MAKERS, Amendment, Reading, ReadingKind, Step, StepEvent, StepKind
 
 __all__ = [
     "LIQUIDS",
@@ -14,6 +14,7 @@ __all__ = [
     "MATERIALS",
     "VESSELS",
     "AccessLog",
+    "Amendment",
     "Chain",
     "Check",
     "ClientEntry",

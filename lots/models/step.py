@@ -118,3 +118,19 @@ class Reading(models.Model):
 
     def __str__(self) -> str:
         return f"{self.get_kind_display()} {self.typed_value} {self.typed_unit}"
+
+
+class Amendment(models.Model):
+    """A correction of a recorded fact: the old value stays readable beside the new one."""
+
+    uuid = models.UUIDField(default=uuid.uuid4, unique=True, editable=False)
+    step = models.ForeignKey(Step, on_delete=models.PROTECT, related_name="amendments")
+    field = models.CharField(max_length=40)
+    old = models.TextField(blank=True)
+    new = models.TextField(blank=True)
+    reason = models.CharField(max_length=400)
+    at = models.DateTimeField()
+    by = models.ForeignKey(User, on_delete=models.PROTECT, related_name="+")
+
+    def __str__(self) -> str:
+        return f"{self.field}: {self.old} → {self.new}"

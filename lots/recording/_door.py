@@ -147,7 +147,7 @@ def door(
             label=writer.label,
             rows=writer.touched,
             actor=by.username,
-            reason=reason,
+            reason=writer.reason,
             at=moment,
         )
 

@@ -1,9 +1,10 @@
 """Holds and the signed decisions that end them; voids and what depends on them."""
 
 import hashlib
-from datetime import datetime
+from datetime import datetime, timedelta
 
 from django.db.models import F
+from django.utils import timezone
 
 from lots.models import (
     CorrectiveAction,
@@ -23,6 +24,8 @@ from . import _judge
 from ._door import Writer
 from .context import Context
 from .errors import RecordingError, StillNeeded
+
+UNDO_WINDOW = timedelta(minutes=2)
 
 
 def place_hold(
@@ -143,11 +146,14 @@ def release_lot(context: Context, *, lot: Lot, reason: str, shown: str) -> Lot:
 def void_step(context: Context, *, step: Step, reason: str) -> Step:
     """Void a record: its draws end, what they took goes back, its lots leave the stock.
 
-    Raises StillNeeded naming the lots that later records drew.
+    A lead voids; a recorder may void an own record within two minutes. Raises StillNeeded naming
+    the lots that later records drew.
     """
     if not reason.strip():
         raise RecordingError("Say why the record is voided.", field="reason")
-    with context.open("void", Action.VOID) as writer:
+    now = context.now or timezone.now()
+    own = step.recorded_by_id == context.by.pk and now - step.recorded_at <= UNDO_WINDOW
+    with context.open("void", Action.RECORD if own else Action.VOID) as writer:
         step = Step.objects.get(pk=step.pk, facility=writer.facility)
         if step.voided_at is not None:
             raise RecordingError("This record is void already.")

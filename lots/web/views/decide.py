@@ -8,6 +8,7 @@ from django.shortcuts import get_object_or_404, redirect, render
 from django.views.decorators.http import require_POST
 
 from lots.models import Hold, Membership, UnpostedEntry
+from lots.recording import amend as corrections
 from lots.recording import decisions, setup
 from lots.recording.errors import RecordingError
 from lots.rules.roles import Action, Role
@@ -97,10 +98,27 @@ def settle(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     return redirect("today", slug)
 
 
-@allow(Action.VOID)
+@allow(Action.AMEND)
+@require_POST
+def amend(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
+    """Correct a fact of a record."""
+    step = get_step(request, uuid)
+    try:
+        corrections.amend_step(
+            context_of(request), step=step, field=_said(request, "field"),
+            new=_said(request, "new"), reason=_said(request, "reason"),
+        )  # fmt: skip
+    except RecordingError as error:
+        messages.error(request, error.message)
+    else:
+        messages.success(request, "Corrected; the old value stays beside the new one.")
+    return redirect("step", slug, step.uuid)
+
+
+@allow(Action.RECORD)
 @require_POST
 def void(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
-    """Void a record."""
+    """Void a record: a lead's act, or a recorder's own within two minutes."""
     step = get_step(request, uuid)
     try:
         decisions.void_step(context_of(request), step=step, reason=_said(request, "reason"))

@@ -5,10 +5,12 @@ from uuid import UUID
 from django.contrib import messages
 from django.http import Http404, HttpRequest, HttpResponse
 from django.shortcuts import redirect, render
+from django.utils import timezone
 
 from lots.models import Lot
 from lots.recording import decisions
 from lots.recording._door import AlreadyRecorded
+from lots.recording.amend import FIELDS
 from lots.recording.errors import RecordingError
 from lots.rules.roles import Action
 
@@ -100,6 +102,10 @@ def step(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
         "readings": found.readings.select_related("instrument"),
         "checks": found.checks.select_related("lot"),
         "events": found.events.order_by("at", "pk"),
+        "amendments": found.amendments.select_related("by").order_by("at", "pk"),
+        "fields": FIELDS,
+        "may_undo": found.recorded_by == request.user
+        and timezone.now() - found.recorded_at <= decisions.UNDO_WINDOW,
         "acts": RUNNING if found.kind == "boil" and found.ended_at is None else {},
     }
     return render(request, "lots/step.html", context)
