@@ -251,8 +251,8 @@ def test_an_act_that_happened_is_kept_and_settled(client, house):
     jars = house.jars()
     client.force_login(house.recorder)
     form = {
-        "client_id": uuid4(), "at": "2026-04-02T22:00", "lot": jars.pk, "quantity_0": "900",
-        "quantity_1": "pieces",
+        "client_id": uuid4(), "at": "2026-04-02T22:00", "lot_1": jars.pk, "quantity_1_0": "900",
+        "quantity_1_1": "pieces",
     }  # fmt: skip
     refused = client.post(url(house, "record", "sale"), form)
     assert refused.status_code == 422
@@ -262,7 +262,7 @@ def test_an_act_that_happened_is_kept_and_settled(client, house):
 
     entry = house.facility.unposted.get()
     assert list(entry.lots.all()) == [jars]
-    assert entry.typed["quantity_0"] == "900"
+    assert entry.typed["quantity_1_0"] == "900"
     client.force_login(house.lead)
     assert "not posted" in client.get(url(house, "today")).content.decode()
     client.post(url(house, "settle", entry.uuid), {"settled_as": "voided", "reason": "miscounted"})
@@ -292,3 +292,32 @@ def test_a_wrong_gtin_is_refused(recorder, house):
     page = url(house, "register", "materials")
     assert recorder.post(page, {**typed, "gtin": "6291041500214"}).status_code == 422
     assert recorder.post(page, {**typed, "gtin": "6291041500213"}).status_code == 302
+
+
+def test_several_drums_are_one_record(recorder, house):
+    house.collect()
+    house.boil()
+    house.filter()
+    typed = {
+        "client_id": uuid4(),
+        "at": "2026-04-02T22:00",
+        "source": house.places["Canner"].pk,
+        "brix_0": "67.2",
+        "brix_1": "°Brix",
+        "device": "hydrometer-60",
+        "sample_temperature_0": "60",
+        "sample_temperature_1": "°F",
+    }
+    for number in (1, 2):
+        typed |= {
+            f"drum_{number}": house.places[f"Drum {number}"].pk,
+            f"amount_{number}_0": "3.9",
+            f"amount_{number}_1": "US gal",
+            f"fill_temperature_{number}_0": "188",
+            f"fill_temperature_{number}_1": "°F",
+            f"seal_{number}": f"S{number}",
+        }
+    assert recorder.post(url(house, "record", "drum-fill"), typed).status_code == 302
+    step = Step.objects.get(kind="drum-fill")
+    assert step.made_lots.count() == 2
+    assert step.detail["seals"] == {"Drum 1": "S1", "Drum 2": "S2"}

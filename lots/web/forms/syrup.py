@@ -16,6 +16,7 @@ from .sap import TANKS, items, places, the_item
 
 HOT_CAUTION = "Filtering and filling heat burns. Face the outlet, wear gloves and sleeves."
 STORES = (PlaceKind.ROOM,)
+LINES = range(1, 7)  # lots of a sale, drums of a filling: more are a second record
 
 
 class SourceFields(RecordForm):
@@ -101,32 +102,50 @@ class FiltrationForm(fields.DensityFields, SourceFields):
 
 
 class DrumFillForm(fields.DensityFields, SourceFields):
-    """One drum filled; several are several records of one afternoon."""
+    """The drums of one filling."""
 
     title = "Drum fill"
     caution = HOT_CAUTION
-    seal = forms.CharField(required=False, max_length=40)
     transmittance = fields.MeasureField(["%Tc"], "Colour at 560 nm")
-    folded = ("device", "seal")
+    folded = (
+        "device", "seal_1",
+        *(
+            f"{name}_{number}"
+            for number in LINES[1:]
+            for name in ("drum", "amount", "fill_temperature", "seal")
+        ),
+    )  # fmt: skip
 
     def build(self, facility: Facility) -> None:
-        """Offer the drums."""
+        """Offer the drums, a line for each."""
         super().build(facility)
-        self.fields["drum"] = forms.ModelChoiceField(places(facility, PlaceKind.DRUM))
-        self.fields["amount"] = fields.volume(facility, "In the drum")
-        self.fields["fill_temperature"] = fields.temperature(facility, "Fill temperature")
+        drums = places(facility, PlaceKind.DRUM)
+        for number in LINES:
+            label = "" if number == 1 else f" {number}"
+            self.fields[f"drum_{number}"] = forms.ModelChoiceField(
+                drums, label=f"Drum{label}", required=number == 1
+            )
+            self.fields[f"amount_{number}"] = fields.volume(facility, f"In the drum{label}")
+            self.fields[f"fill_temperature_{number}"] = fields.temperature(
+                facility, f"Fill temperature{label}"
+            )
+            self.fields[f"seal_{number}"] = forms.CharField(
+                label=f"Seal{label}", required=False, max_length=40
+            )
         self.fields["sample_temperature"] = fields.temperature(facility, "Sample temperature")
-        self.order_fields(("at", "source", "taken", "drum", "amount", "fill_temperature", "brix"))
+        first = ("drum_1", "amount_1", "fill_temperature_1")
+        self.order_fields(("at", "source", "taken", "emptied", *first, "brix"))
 
     def record(self, context: Context) -> Step:
-        """Record the drum."""
+        """Record the drums: all of them, or none."""
         data = self.cleaned_data
-        drum = syrup.Drum(data["drum"], data["amount"], data["fill_temperature"], data["seal"])
+        names = ("drum", "amount", "fill_temperature", "seal")
+        lines = [number for number in LINES if data.get(f"drum_{number}")]
         return syrup.record_drum_fill(
             context,
             at=self.moment,
             sources=self.sources(),
-            drums=[drum],
+            drums=[syrup.Drum(*(data[f"{name}_{n}"] for name in names)) for n in lines],
             item=the_item(self.facility, ItemKind.SYRUP),
             brix=self.density(),
             transmittance=data["transmittance"],
@@ -211,14 +230,22 @@ class SaleForm(RecordForm):
     title = "Sale"
     document = forms.CharField(label="Invoice or slip", required=False, max_length=80)
     address = forms.CharField(label="Delivered to", required=False, max_length=200)
-    quantity = fields.MeasureField(["pieces", *fields.MASSES], "Quantity")
-    folded = ("address", "carrier")
+    folded = (
+        "address", "carrier",
+        *(f"{name}_{number}" for number in LINES[1:] for name in ("lot", "quantity")),
+    )  # fmt: skip
 
     def build(self, facility: Facility) -> None:
-        """Offer released goods and customers."""
-        self.fields["lot"] = fields.LotChoice(
-            fields.lots_in_stock(facility, ItemKind.PACKED, ItemKind.SYRUP, released=True)
-        )
+        """Offer released goods and customers, a line for each lot."""
+        goods = fields.lots_in_stock(facility, ItemKind.PACKED, ItemKind.SYRUP, released=True)
+        for number in LINES:
+            label = "" if number == 1 else f" {number}"
+            self.fields[f"lot_{number}"] = fields.LotChoice(
+                goods, label=f"Lot{label}", required=number == 1
+            )
+            self.fields[f"quantity_{number}"] = fields.MeasureField(
+                ["pieces", *fields.MASSES], f"Quantity{label}"
+            )
         partners = Partner.objects.filter(facility=facility).order_by("name")
         self.fields["customer"] = forms.ModelChoiceField(
             partners.filter(kind=PartnerKind.CUSTOMER),
@@ -228,15 +255,19 @@ class SaleForm(RecordForm):
         self.fields["carrier"] = forms.ModelChoiceField(
             partners.filter(kind=PartnerKind.CARRIER), required=False
         )
-        self.order_fields(("at", "lot", "quantity", "customer", "document"))
+        self.order_fields(("at", "lot_1", "quantity_1", "customer", "document"))
 
     def record(self, context: Context) -> Step:
-        """Record the sale."""
+        """Record the sale: all of its lines, or none."""
         data = self.cleaned_data
         return goods_out.record_sale(
             context,
             at=self.moment,
-            sold=[FromLot(data["lot"], data["quantity"])],
+            sold=[
+                FromLot(data[f"lot_{number}"], data[f"quantity_{number}"])
+                for number in LINES
+                if data.get(f"lot_{number}")
+            ],
             customer=data["customer"],
             carrier=data["carrier"],
             document=data["document"],
