@@ -29,25 +29,6 @@ from lots.recording.measures import NOT_MEASURED, DensityReading, Typed
 from lots.rules.roles import Role
 
 PASSWORD = "sugaring-2026"  # noqa: S105 - printed for the demo alone
-ITEMS = (
-    ("Sap", "sap", "mg"), ("Concentrate", "concentrate", "mg"), ("Syrup", "syrup", "mg"),
-    ("Pan contents", "contents", "mg"), ("Filter aid", "filter-aid", "mg"),
-    ("Filter paper", "filter-paper", "piece"), ("Defoamer", "defoamer", "mg"),
-    ("Cleaner", "cleaner", "mg"), ("Gallon jug", "container", "piece"),
-    ("Half-gallon jug", "container", "piece"), ("Quart jug", "container", "piece"),
-    ("Pint jug", "container", "piece"), ("250 mL glass", "container", "piece"),
-    ("Closure", "closure", "piece"), ("Label, amber, version 3", "label", "piece"),
-)  # fmt: skip
-PRODUCTS = (
-    ("Amber gallon", "1", "US gal"), ("Amber half-gallon", "0.5", "US gal"),
-    ("Amber quart", "1", "qt"), ("Amber pint", "1", "pt"), ("Amber 250 mL glass", "250", "mL"),
-)  # fmt: skip
-PLACES = (
-    ("North woods", "woods"), ("South woods", "woods"), ("Tank 1", "tank"), ("Tank 2", "tank"),
-    ("Tank 3", "tank"), ("RO", "ro"), ("Evaporator", "evaporator"), ("Press", "press"),
-    ("Batch tank", "batch-tank"), ("Batch tank 2", "batch-tank"), ("Filtered tank", "batch-tank"),
-    ("Canner", "canner"), ("Store", "room"), ("Supply room", "room"),
-)  # fmt: skip
 
 
 def measure(pair: list[str] | None) -> Typed:
@@ -102,34 +83,38 @@ class Season:
         return Lot.objects.filter(item=self.item(name)).order_by("made_at").get()
 
 
-def load(now: datetime) -> Season:
-    """Make the facility and replay the season so that it ends the day before ``now``."""
+def load(now: datetime, suffix: str = "") -> Season:
+    """Make the facility and replay the season so that it ends the day before ``now``.
+
+    ``suffix`` sets a second copy's log-ins and address apart: for measurements.
+    """
     path = Path(settings.BASE_DIR) / "fixtures" / "demo-season.json"
     data = json.loads(path.read_text(encoding="utf-8"))
     zone = ZoneInfo(data["facility"]["zone"])
     midnight = now.astimezone(zone).replace(hour=0, minute=0, second=0, microsecond=0)
     start = midnight - timedelta(days=data["last_day"] + 1)
-    season = _prepare(data, start.astimezone(ZoneInfo("UTC")))
+    data["facility"]["slug"] += suffix
+    season = _prepare(data, start.astimezone(ZoneInfo("UTC")), suffix)
     for row in data["records"]:
         ACTS[row["do"]](season, row, season.at(row["day"], row["hour"]))
     return season
 
 
-def _prepare(data: dict[str, Any], start: datetime) -> Season:
-    owner = User.objects.create_user("demo-owner", password=PASSWORD)
+def _prepare(data: dict[str, Any], start: datetime, suffix: str) -> Season:
+    owner = User.objects.create_user(f"demo-owner{suffix}", password=PASSWORD)
     facility = setup.create_facility(owner=owner, fictional=True, now=start, **data["facility"])
     early = Context(facility, owner, now=start)
     people = {"owner": owner}
     for role in (Role.LEAD, Role.RECORDER, Role.INSPECTOR):
         member = setup.add_person(
-            early, username=f"demo-{role.value}", password=PASSWORD, role=role
+            early, username=f"demo-{role.value}{suffix}", password=PASSWORD, role=role
         )
         people[role.value] = member.user
-    for name, kind in (*PLACES, *((name, "drum") for name in data["drums"])):
+    for name, kind in (*data["places"], *((name, "drum") for name in data["drums"])):
         setup.add_place(early, name=name, kind=kind)
-    for name, kind, unit in ITEMS:
+    for name, kind, unit in data["items"]:
         setup.add_item(early, name=name, kind=kind, unit=unit)
-    for name, size, unit in PRODUCTS:
+    for name, size, unit in data["products"]:
         setup.add_item(
             early, name=name, kind="packed", unit="piece", size_value=size, size_unit=unit,
             label_grade="Amber", label_version="3",

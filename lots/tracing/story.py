@@ -1,6 +1,7 @@
 """A lot's story: what is behind it, where it went, and how much is accounted for."""
 
 from dataclasses import dataclass, field
+from datetime import datetime
 from typing import Any
 
 from lots.models import DrawRole, Lot, LotState, Reading, Step, StepKind, Stock
@@ -113,20 +114,17 @@ def _customers(
 
 def _bounds(steps: list[Step]) -> list[Step]:
     """Return for each vessel behind a lot its last clean break before the earliest step there."""
-    found = []
-    for place in {step.place_id for step in steps if step.place_id}:
-        first = min(step.started_at for step in steps if step.place_id == place)
-        broken = (
-            Step.objects.filter(
-                kind=StepKind.CLEANING, place=place, started_at__lt=first, voided_at=None
-            )
-            .order_by("-started_at")
-            .select_related("place")
-            .first()
-        )
-        if broken:
-            found.append(broken)
-    return sorted(found, key=lambda step: (step.started_at, step.pk))
+    first: dict[int, datetime] = {}
+    for step in steps:
+        if step.place_id:
+            known = first.get(step.place_id, step.started_at)
+            first[step.place_id] = min(known, step.started_at)
+    broken = Step.objects.filter(kind=StepKind.CLEANING, place__in=first, voided_at=None)
+    last: dict[int, Step] = {}
+    for step in broken.order_by("started_at", "pk").select_related("place"):
+        if step.place_id and step.started_at < first[step.place_id]:
+            last[step.place_id] = step
+    return sorted(last.values(), key=lambda step: (step.started_at, step.pk))
 
 
 def account(lot: Lot) -> Accounting:
