@@ -1,0 +1,1 @@
+"""Several people at once, in real transactions on both databases."""
