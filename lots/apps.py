@@ -12,6 +12,7 @@ class LotsConfig(AppConfig):
 
     def ready(self) -> None:
         """Re-install the triggers after each migrate: a SQLite table rebuild drops them."""
+        from lots.db import checks  # noqa: F401 - registers the system checks
         from lots.db.guards import install_after_migrate
 
         post_migrate.connect(install_after_migrate, sender=self, dispatch_uid="lots.guards")

@@ -3,6 +3,7 @@
 import pytest
 from django.db import DatabaseError, connection, transaction
 
+from lots.db.checks import guards_present
 from lots.db.guards import missing_guards
 from lots.models import Lot
 
@@ -43,3 +44,14 @@ def test_overdraw_is_refused_by_the_database_itself(house):
     lot = house.collect()
     with pytest.raises(DatabaseError), transaction.atomic():
         Lot.objects.filter(pk=lot.pk).update(drawn=lot.made + 1)
+
+
+def test_a_missing_guard_is_named_by_the_database_check(house):
+    assert guards_present(databases=["default"]) == []
+    table = "" if connection.vendor == "sqlite" else " ON lots_draw"
+    with connection.cursor() as cursor:
+        cursor.execute(f"DROP TRIGGER guard_lots_draw_update{table}")
+
+    fault = guards_present(databases=["default"])[0]
+
+    assert "guard_lots_draw_update" in fault.msg
