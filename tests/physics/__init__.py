@@ -1,1 +1,1 @@
-"""Package."""
+"""Tests of the physics floor: no database, no framework."""
