@@ -2,7 +2,7 @@
 
 from lots.models import StepKind
 
-from .forms import handling, sap, syrup
+from .forms import container_fill, handling, sap, syrup
 from .forms.base import RecordForm
 
 SCREENS: dict[str, type[RecordForm]] = {
@@ -11,7 +11,7 @@ SCREENS: dict[str, type[RecordForm]] = {
     StepKind.BOIL.value: sap.BoilForm,
     StepKind.FILTRATION.value: syrup.FiltrationForm,
     StepKind.DRUM_FILL.value: syrup.DrumFillForm,
-    StepKind.CONTAINER_FILL.value: syrup.ContainerFillForm,
+    StepKind.CONTAINER_FILL.value: container_fill.ContainerFillForm,
     StepKind.SALE.value: syrup.SaleForm,
     StepKind.RECEIVING.value: syrup.ReceivingForm,
     StepKind.CLEANING.value: syrup.CleaningForm,
@@ -28,8 +28,13 @@ SCREENS: dict[str, type[RecordForm]] = {
     StepKind.SUPPLIER_RETURN.value: handling.SupplierReturnForm,
     StepKind.OPENING_STOCK.value: handling.OpeningStockForm,
 }
-RUNNING: dict[str, type[RecordForm]] = {
-    "feed": sap.FeedForm,
-    "draw-off": sap.DrawOffForm,
-    "close": sap.CloseBoilForm,
+# Screens that open a step and leave it running; what is done inside it is below.
+OPENERS: dict[str, type[RecordForm]] = {"open-fill": container_fill.OpenFillForm}
+RUNNING: dict[str, dict[str, type[RecordForm]]] = {
+    StepKind.BOIL.value: {
+        "feed": sap.FeedForm,
+        "draw-off": sap.DrawOffForm,
+        "close": sap.CloseBoilForm,
+    },
+    StepKind.CONTAINER_FILL.value: {"finish": container_fill.FinishFillForm},
 }

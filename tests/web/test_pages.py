@@ -321,3 +321,32 @@ def test_several_drums_are_one_record(recorder, house):
     step = Step.objects.get(kind="drum-fill")
     assert step.made_lots.count() == 2
     assert step.detail["seals"] == {"Drum 1": "S1", "Drum 2": "S2"}
+
+
+def test_a_fill_is_opened_with_its_code_and_finished(recorder, house):
+    house.collect()
+    house.boil()
+    house.filter()
+    opened = recorder.post(
+        url(house, "record", "open-fill"),
+        {
+            "client_id": uuid4(), "at": "2026-04-02T22:00", "product": house.items["quart"].pk,
+            "since_last_run": "washed",
+        },
+    )  # fmt: skip
+    page = recorder.get(opened.headers["Location"]).content.decode()
+    step = Step.objects.get(kind="container-fill")
+    assert "S26092A" in page  # S, year, day 92 (2 April), first run
+
+    recorder.post(
+        url(house, "running", step.uuid, "finish"),
+        {
+            "client_id": uuid4(), "at": "2026-04-02T23:00", "made": "20", "rejected": "1",
+            "source": house.places["Canner"].pk, "taken_0": "5.2", "taken_1": "US gal",
+            "into": house.places["Store"].pk, "fill_1_0": "186", "fill_1_1": "°F",
+        },
+    )  # fmt: skip
+
+    step.refresh_from_db()
+    assert step.ended_at is not None
+    assert step.made_lots.get().printed_code.text == "S26092A"

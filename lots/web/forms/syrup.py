@@ -5,7 +5,7 @@ from typing import Any
 from django import forms
 
 from lots.models import Facility, ItemKind, Partner, PartnerKind, Place, PlaceKind, Step, StepKind
-from lots.recording import container_fill, goods_out, receiving, syrup, upkeep
+from lots.recording import goods_out, receiving, syrup, upkeep
 from lots.recording._sources import FromLot, FromVessel, Source
 from lots.recording.context import Context
 from lots.recording.measures import NOT_MEASURED
@@ -149,78 +149,6 @@ class DrumFillForm(fields.DensityFields, SourceFields):
             item=the_item(self.facility, ItemKind.SYRUP),
             brix=self.density(),
             transmittance=data["transmittance"],
-        )
-
-
-class ContainerFillForm(fields.DensityFields, SourceFields):
-    """One product's run."""
-
-    title = "Container fill"
-    verb = "Record fill"
-    caution = HOT_CAUTION
-    made = forms.IntegerField(label="Filled", min_value=0)
-    rejected = forms.IntegerField(label="Rejected", min_value=0, initial=0, required=False)
-    printed_code = forms.CharField(label="Code (empty: the next)", required=False, max_length=20)
-    best_before = forms.DateField(
-        label="Best before", required=False, widget=forms.DateInput(attrs={"type": "date"})
-    )
-    transmittance = fields.MeasureField(["%Tc"], "Colour at 560 nm")
-    people = forms.CharField(label="People", required=False, max_length=200)
-    folded = (
-        "device", "rejected", "printed_code", "best_before", "container", "closure", "label",
-        "people",
-    )  # fmt: skip
-
-    def build(self, facility: Facility) -> None:
-        """Offer products, stock and stores."""
-        super().build(facility)
-        self.fields["product"] = forms.ModelChoiceField(items(facility, ItemKind.PACKED))
-        self.fields["into"] = forms.ModelChoiceField(places(facility, *STORES), label="Stored in")
-        for number in ("1", "2", "3"):
-            self.fields[f"fill_{number}"] = fields.temperature(
-                facility, f"Fill temperature {number}"
-            )
-        self.fields["sample_temperature"] = fields.temperature(facility, "Sample temperature")
-        for kind in (ItemKind.CONTAINER, ItemKind.CLOSURE, ItemKind.LABEL):
-            self.fields[kind.value] = fields.LotChoice(
-                fields.lots_in_stock(facility, kind), required=False, label=f"{kind.label} lot"
-            )
-        self.order_fields(
-            (
-                "at",
-                "product",
-                "made",
-                "source",
-                "taken",
-                "emptied",
-                "fill_1",
-                "fill_2",
-                "fill_3",
-                "brix",
-                "sample_temperature",
-                "transmittance",
-                "into",
-            )  # fmt: skip
-        )
-
-    def record(self, context: Context) -> Step:
-        """Record the run."""
-        data = self.cleaned_data
-        used = [data[kind] for kind in ("container", "closure", "label") if data.get(kind)]
-        run = container_fill.Run(
-            product=data["product"],
-            made=data["made"],
-            rejected=data["rejected"] or 0,
-            into=data["into"],
-            printed_code=data["printed_code"],
-            best_before=data["best_before"],
-            fill_temperatures=[data[f"fill_{number}"] for number in ("1", "2", "3")],
-            brix=self.density(),
-            transmittance=data["transmittance"],
-            packaging=[container_fill.Packaging(lot) for lot in used],
-        )
-        return container_fill.record_container_fill(
-            context, at=self.moment, sources=self.sources(), run=run, people=data["people"]
         )
 
 

@@ -7,7 +7,7 @@ from django.http import Http404, HttpRequest, HttpResponse
 from django.shortcuts import redirect, render
 from django.utils import timezone
 
-from lots.models import Lot
+from lots.models import Lot, PrintedCode, Step
 from lots.recording import decisions
 from lots.recording._door import AlreadyRecorded
 from lots.recording.amend import FIELDS
@@ -16,15 +16,16 @@ from lots.rules.roles import Action
 
 from ..access import allow, context_of, facility_of, get_step
 from ..forms.base import RecordForm
-from ..screens import RUNNING, SCREENS
+from ..screens import OPENERS, RUNNING, SCREENS
 
 
 @allow(Action.RECORD)
 def record(request: HttpRequest, slug: str, kind: str) -> HttpResponse:
     """Show a step's form, or write its record."""
-    if kind not in SCREENS:
+    screens = {**SCREENS, **OPENERS}
+    if kind not in screens:
         raise Http404
-    form = SCREENS[kind](facility_of(request), request.POST if request.method == "POST" else None)
+    form = screens[kind](facility_of(request), request.POST if request.method == "POST" else None)
     if request.method == "POST" and form.is_valid():
         try:
             step = form.record(context_of(request, form.client()))
@@ -65,10 +66,11 @@ def _keep(
 @allow(Action.RECORD)
 def running(request: HttpRequest, slug: str, uuid: UUID, act: str) -> HttpResponse:
     """Record one act inside a running step."""
-    if act not in RUNNING:
-        raise Http404
     step = get_step(request, uuid)
-    form = RUNNING[act](facility_of(request), request.POST if request.method == "POST" else None)
+    acts = RUNNING.get(step.kind, {})
+    if act not in acts:
+        raise Http404
+    form = acts[act](facility_of(request), request.POST if request.method == "POST" else None)
     if request.method == "POST" and form.is_valid():
         try:
             form.record_on(context_of(request, form.client()), step)  # type: ignore[attr-defined]
@@ -90,6 +92,18 @@ def _show(request: HttpRequest, form: RecordForm) -> HttpResponse:
     return render(request, "lots/record.html", context, status=status)
 
 
+def _acts(found: Step) -> list[tuple[str, str]]:
+    """Return what can be recorded inside a running step, with its title."""
+    acts = RUNNING.get(found.kind, {}) if found.ended_at is None else {}
+    return [(act, form.title) for act, form in acts.items()]
+
+
+def _reserved(found: Step) -> str:
+    """Return the code that an open fill reserved."""
+    uuid = found.detail.get("printed_code")
+    return PrintedCode.objects.get(uuid=uuid).text if uuid else ""
+
+
 @allow(Action.VIEW)
 def step(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     """Show one recorded act."""
@@ -106,6 +120,7 @@ def step(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
         "fields": FIELDS,
         "may_undo": found.recorded_by == request.user
         and timezone.now() - found.recorded_at <= decisions.UNDO_WINDOW,
-        "acts": RUNNING if found.kind == "boil" and found.ended_at is None else {},
+        "acts": _acts(found),
+        "reserved": _reserved(found),
     }
     return render(request, "lots/step.html", context)

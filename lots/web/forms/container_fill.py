@@ -1,0 +1,145 @@
+"""Forms of filling containers: a whole run afterwards, or opened and finished."""
+
+from django import forms
+
+from lots.models import Facility, Item, ItemKind, PrintedCode, Step
+from lots.recording import container_fill
+from lots.recording.context import Context
+
+from . import fields
+from .base import RecordForm
+from .sap import items, places
+from .syrup import HOT_CAUTION, STORES, SourceFields
+
+
+class ContainerFillForm(fields.DensityFields, SourceFields):
+    """One product's run."""
+
+    title = "Container fill"
+    verb = "Record fill"
+    caution = HOT_CAUTION
+    made = forms.IntegerField(label="Filled", min_value=0)
+    rejected = forms.IntegerField(label="Rejected", min_value=0, initial=0, required=False)
+    printed_code = forms.CharField(label="Code (empty: the next)", required=False, max_length=20)
+    best_before = forms.DateField(
+        label="Best before", required=False, widget=forms.DateInput(attrs={"type": "date"})
+    )
+    transmittance = fields.MeasureField(["%Tc"], "Colour at 560 nm")
+    people = forms.CharField(label="People", required=False, max_length=200)
+    folded = (
+        "device", "rejected", "printed_code", "best_before", "container", "closure", "label",
+        "people",
+    )  # fmt: skip
+
+    def build(self, facility: Facility) -> None:
+        """Offer products, stock and stores."""
+        super().build(facility)
+        self.fields["product"] = forms.ModelChoiceField(items(facility, ItemKind.PACKED))
+        self.fields["into"] = forms.ModelChoiceField(places(facility, *STORES), label="Stored in")
+        for number in ("1", "2", "3"):
+            self.fields[f"fill_{number}"] = fields.temperature(
+                facility, f"Fill temperature {number}"
+            )
+        self.fields["sample_temperature"] = fields.temperature(facility, "Sample temperature")
+        for kind in (ItemKind.CONTAINER, ItemKind.CLOSURE, ItemKind.LABEL):
+            self.fields[kind.value] = fields.LotChoice(
+                fields.lots_in_stock(facility, kind), required=False, label=f"{kind.label} lot"
+            )
+        self.order_fields(
+            (
+                "at",
+                "product",
+                "made",
+                "source",
+                "taken",
+                "emptied",
+                "fill_1",
+                "fill_2",
+                "fill_3",
+                "brix",
+                "sample_temperature",
+                "transmittance",
+                "into",
+            )  # fmt: skip
+        )
+
+    def run(self, product: Item) -> container_fill.Run:
+        """Return what the form says of the run."""
+        data = self.cleaned_data
+        used = [data[kind] for kind in ("container", "closure", "label") if data.get(kind)]
+        return container_fill.Run(
+            product=product,
+            made=data["made"],
+            rejected=data["rejected"] or 0,
+            into=data["into"],
+            printed_code=data.get("printed_code", ""),
+            best_before=data["best_before"],
+            fill_temperatures=[data[f"fill_{number}"] for number in ("1", "2", "3")],
+            brix=self.density(),
+            transmittance=data["transmittance"],
+            packaging=[container_fill.Packaging(lot) for lot in used],
+        )
+
+    def record(self, context: Context) -> Step:
+        """Record the whole run."""
+        return container_fill.record_container_fill(
+            context,
+            at=self.moment,
+            sources=self.sources(),
+            run=self.run(self.cleaned_data["product"]),
+            people=self.cleaned_data["people"],
+        )
+
+
+class OpenFillForm(RecordForm):
+    """The start of a run: its code is reserved, so that the coder can be set."""
+
+    title = "Open a fill"
+    verb = "Open and reserve the code"
+    caution = HOT_CAUTION
+    printed_code = forms.CharField(label="Code (empty: the next)", required=False, max_length=20)
+    people = forms.CharField(label="People", required=False, max_length=200)
+    since_last_run = forms.ChoiceField(
+        label="Since the last run the canner was",
+        choices=[(one, one) for one in ("left as it was", "emptied", "rinsed", "washed")],
+    )
+    folded = ("people",)
+
+    def build(self, facility: Facility) -> None:
+        """Offer the products."""
+        self.fields["product"] = forms.ModelChoiceField(items(facility, ItemKind.PACKED))
+        self.order_fields(("at", "product", "printed_code", "since_last_run"))
+
+    def record(self, context: Context) -> Step:
+        """Open the run."""
+        data = self.cleaned_data
+        names = ("product", "printed_code", "since_last_run", "people")
+        step, _ = container_fill.open_container_fill(
+            context, at=self.moment, **{name: data[name] for name in names}
+        )
+        return step
+
+
+class FinishFillForm(ContainerFillForm):
+    """The end of a run that was opened: what it drew, used and made."""
+
+    title = "Finish the fill"
+    verb = "Finish the fill"
+
+    def build(self, facility: Facility) -> None:
+        """Leave out what the opening said."""
+        super().build(facility)
+        for name in ("product", "printed_code", "people"):
+            del self.fields[name]
+
+    def record_on(self, context: Context, step: Step) -> Step:
+        """Close the run."""
+        code = PrintedCode.objects.get(uuid=step.detail["printed_code"])
+        container_fill.close_container_fill(
+            context,
+            step=step,
+            ended_at=self.moment,
+            sources=self.sources(),
+            run=self.run(code.item),
+        )
+        return step
