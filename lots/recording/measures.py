@@ -64,22 +64,30 @@ class DensityReading:
         return f"{self.device} {self.reference_celsius:g} °C, density polynomial v1"
 
     def true_brix(self) -> float:
-        """Return the true °Brix; raises RecordingError for an impossible number."""
+        """Return the true °Brix, never below zero; raises RecordingError for an impossible number.
+
+        Nearly plain water read cold corrects to a little below nought: that is no sugar.
+        """
         try:
-            number = float(self.value)
-            if self.unit == BAUME:
-                number = hydrometer.brix_from_baume(number)
-            degrees = celsius(self.sample, name="sample_temperature")
-            if degrees is None or self.compensates:
-                return number
-            if self.device == "refractometer":
-                return refractometer.true_brix(number, degrees)
-            return hydrometer.true_brix(number, degrees, self.reference_celsius)
+            return max(0.0, self._corrected())
         except ValueError as error:
             raise RecordingError(
                 f"A density of {self.value} {self.unit} cannot be corrected: {error}",
                 field="brix",
             ) from error
+
+    def _corrected(self) -> float:
+        number = float(self.value)
+        if self.unit == BAUME:
+            number = hydrometer.brix_from_baume(number)
+        degrees = celsius(self.sample, name="sample_temperature")
+        if degrees is None or self.compensates:
+            if not 0 <= number <= 85:
+                raise ValueError("Brix must be from 0 to 85.")
+            return number
+        if self.device == "refractometer":
+            return refractometer.true_brix(number, degrees)
+        return hydrometer.true_brix(number, degrees, self.reference_celsius)
 
 
 @dataclass(frozen=True)
@@ -127,7 +135,12 @@ def liquid_mass(amount: Typed, brix: float | None, temperature: Typed = NOT_MEAS
         raise RecordingError("An amount cannot be below zero.", field="amount")
     degrees = celsius(temperature)
     if amount.unit in VOLUMES:
-        return rounding.liquid_milligrams(
-            amount.value, amount.unit, brix or 0.0, 20.0 if degrees is None else degrees
-        )
+        try:
+            return rounding.liquid_milligrams(
+                amount.value, amount.unit, brix or 0.0, 20.0 if degrees is None else degrees
+            )
+        except ValueError as error:
+            raise RecordingError(
+                f"{amount.text} {amount.unit} cannot be weighed: {error}", field="amount"
+            ) from error
     return rounding.milligrams(amount.value, amount.unit)

@@ -7,8 +7,8 @@ import pytest
 from lots.models import Check, Lot, LotState
 from lots.recording import decisions, goods_out, syrup
 from lots.recording._sources import FromLot, FromVessel
-from lots.recording.errors import NotReleased
-from lots.recording.measures import Typed
+from lots.recording.errors import NotReleased, RecordingError
+from lots.recording.measures import DensityReading, Liquid, Typed
 from tests.factories import brix, fahrenheit, gallons
 
 pytestmark = pytest.mark.django_db
@@ -89,3 +89,20 @@ def test_a_light_drum_is_not_sold_in_bulk(house):
 
     with pytest.raises(NotReleased, match="below the minimum"):
         goods_out.record_sale(lead, at=house.at(7), sold=[FromLot(drum, gallons("7"))])
+
+
+def test_cold_water_read_below_nought_is_no_sugar():
+    reading = DensityReading(Decimal("0.2"), device="refractometer", sample=Typed(Decimal(5), "°C"))
+    assert reading.true_brix() == 0.0
+    assert Liquid(gallons("10"), reading.true_brix()).solids() == 0
+
+
+@pytest.mark.parametrize("number", ["-1", "86", "120"])
+def test_an_impossible_density_is_refused(number):
+    with pytest.raises(RecordingError, match="cannot be corrected"):
+        DensityReading(Decimal(number), compensates=True).true_brix()
+
+
+def test_a_frozen_or_boiling_amount_that_cannot_be_weighed_is_refused_in_words():
+    with pytest.raises(RecordingError, match="cannot be weighed"):
+        Liquid(gallons("10"), 2.0, Typed(Decimal(-20), "°C")).milligrams()
