@@ -1,13 +1,11 @@
 """Settings: one file, every value from the environment."""
 
-import os
 from pathlib import Path
 
 from . import env
 
 BASE_DIR = Path(__file__).resolve().parent.parent
-DATA_DIR = Path(os.environ.get("SUGARHOUSE_DATA", BASE_DIR / "data")).resolve()
-DATA_DIR.mkdir(parents=True, exist_ok=True)
+DATA_DIR = env.folder("SUGARHOUSE_DATA", BASE_DIR / "data")
 
 DEBUG = env.flag("SUGARHOUSE_DEBUG")
 SECRET_KEY = env.secret_key(DATA_DIR)

@@ -1,0 +1,1 @@
+"""The project around the book: settings, commands, documents."""
