@@ -2,12 +2,14 @@
 
 import os
 import tempfile
+from pathlib import Path
 
 # A folder of their own, whatever the environment names: tests never touch a real book.
 # Parallel workers inherit the one of the process that started them, which removes it.
 if "PYTEST_XDIST_WORKER" not in os.environ:
     _data = tempfile.TemporaryDirectory(prefix="sugarhouse-test-")
     os.environ["SUGARHOUSE_DATA"] = _data.name
+    (Path(_data.name) / "staticfiles").mkdir()
 
 import pytest
 from hypothesis import settings as hypothesis_settings
