@@ -15,6 +15,7 @@ KEPT_TABLES = (
     "lots_hold",
     "lots_printedcode",
     "lots_amendment",
+    "lots_adjustment",
 )
 NEVER_UPDATED = ("lots_journalentry", "lots_check", "lots_printedcode", "lots_amendment")
 

@@ -191,3 +191,19 @@ class Stock(models.Model):
 
     def __str__(self) -> str:
         return f"{self.quantity} of {self.lot_id} at {self.place_id}"
+
+
+class Adjustment(models.Model):
+    """A difference a step booked on a lot: a count, a gauge, material above its book."""
+
+    uuid = models.UUIDField(default=uuid.uuid4, unique=True, editable=False)
+    step = models.ForeignKey(Step, on_delete=models.PROTECT, related_name="adjustments")
+    lot = models.ForeignKey(Lot, on_delete=models.PROTECT, related_name="adjustments")
+    place = models.ForeignKey(Place, on_delete=models.PROTECT)
+    quantity = models.BigIntegerField()
+    solids = models.BigIntegerField(default=0)
+    ended_at = models.DateTimeField(null=True)
+    ended_by = models.ForeignKey(User, null=True, on_delete=models.PROTECT)
+
+    def __str__(self) -> str:
+        return f"{self.quantity:+d} of {self.lot_id}"

@@ -19,7 +19,7 @@ from lots.models import Chain, ClientEntry, Counter, Facility, Membership, Step,
 from lots.rules.roles import Action, Role, may
 
 from . import journal
-from .errors import NotAllowed, SentBefore, WrongTime
+from .errors import NotAllowed, OtherFacility, SentBefore, WrongTime
 
 Row = TypeVar("Row", bound=models.Model)
 
@@ -56,6 +56,18 @@ class Writer:
         """Remember a written row for the journal."""
         self.touched.append(row)
         return row
+
+    def own(self, *rows: Any) -> None:
+        """Refuse a row of another facility: its goods are received first."""
+        for row in rows:
+            if row is not None and row.facility_id != self.facility.pk:
+                raise OtherFacility(f"{row} is another facility's; receive it first.")
+
+    def require(self, action: Action) -> None:
+        """Refuse an act that only the record's own numbers showed to need a higher role."""
+        role = role_of(self.by, self.facility)
+        if role is None or not may(role, action):
+            raise NotAllowed("Your role at this facility does not cover this; ask a lead.")
 
     def is_live(self, at: datetime) -> bool:
         """Whether an act at that time is recorded as it happens."""

@@ -3,15 +3,15 @@
 Quantities are whole milligrams (liquids, materials by weight) or whole pieces.
 """
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 from datetime import datetime
 from typing import Any
 
 from django.db.models import F, Q
 
-from lots.identification import lot_code
 from lots.models import (
+    Adjustment,
     Draw,
     DrawRole,
     GoodsKind,
@@ -19,15 +19,15 @@ from lots.models import (
     Lot,
     LotState,
     Place,
-    PrintedCode,
     Step,
     Stock,
 )
 from lots.quantities import rounding
 from lots.tracing.cone import reaches
 
+from . import _codes, _judge
 from ._door import Writer
-from .errors import CodeTaken, NotEnough, OnHold, WouldLoop
+from .errors import CodeTaken, NotEnough, OnHold, WouldLoop, WrongTime
 
 # Where a held lot may still go (design: quarantine, sample, return, rework, destroy).
 HELD_MAY = frozenset({DrawRole.REMOVED, DrawRole.RETURNED})
@@ -40,43 +40,6 @@ class Taken:
 
     quantity: int | None
     solids: int | None
-
-
-def internal_code(writer: Writer, item: Item, at: datetime) -> str:
-    """Return a fresh internal code: kind letter, year, day of year, running number."""
-    day = at.astimezone(_zone(writer)).date()
-    prefix = f"{item.kind[:1].upper()}{day:%y%j}"
-    return f"{prefix}-{writer.next_number('lot:' + prefix) + 1}"
-
-
-def _zone(writer: Writer) -> Any:
-    from zoneinfo import ZoneInfo
-
-    return ZoneInfo(writer.facility.zone)
-
-
-def reserve_code(writer: Writer, item: Item, at: datetime, text: str = "") -> PrintedCode:
-    """Take the printed code of a run: the one given, or the next of the facility's pattern."""
-    if text:
-        clean = lot_code.normalise(text)
-        if not lot_code.is_valid(clean):
-            raise CodeTaken(
-                f"{text} cannot be printed: use up to 10 of A–Z without O and I, 0–9, hyphen.",
-                field="printed_code",
-            )
-        if PrintedCode.objects.filter(item=item, text=clean).exists():
-            raise CodeTaken(f"{clean} is already on {item.name}.", field="printed_code")
-        return writer.touch(
-            PrintedCode.objects.create(facility=writer.facility, item=item, text=clean)
-        )
-    day = at.astimezone(_zone(writer)).date()
-    while True:
-        serial = writer.next_number(f"printed:{day:%y%j}")
-        clean = lot_code.render(writer.facility.code_pattern, day, serial)
-        if not PrintedCode.objects.filter(item=item, text=clean).exists():
-            return writer.touch(
-                PrintedCode.objects.create(facility=writer.facility, item=item, text=clean)
-            )
 
 
 def make(
@@ -92,7 +55,8 @@ def make(
 ) -> Lot:
     """Make one lot and put it where it stands; ``quantity`` ``None`` is pending."""
     moment = at or step.started_at
-    code = fields.pop("code", "") or internal_code(writer, item, moment)
+    writer.own(item, place)
+    code = fields.pop("code", "") or _codes.internal_code(writer, item, moment)
     if Lot.objects.filter(facility=writer.facility, code=code).exists():
         raise CodeTaken(f"{code} is already a lot here.", field="code")
     lot = Lot.objects.create(
@@ -111,7 +75,20 @@ def make(
         Stock.objects.create(lot=lot, place=place, quantity=quantity or 0)
         if place.is_vessel and item.is_liquid:
             _tell_later_steps(writer, lot, place, moment)
+    for draw in step.draws.filter(ended_at=None, role__in=SHARES).select_related("lot"):
+        _inherit(writer, draw.lot, [lot])
     return lot
+
+
+def _inherit(writer: Writer, source: Lot, made: Iterable[Lot]) -> None:
+    """Hold what was made from a held lot: an act that happened is recorded, not waved through."""
+    hold = source.holds.filter(ended_at=None).first()
+    if hold is None:
+        return
+    for lot in made:
+        reason = f"Made from {source.code}, which is on hold: {hold.reason}"
+        if not lot.holds.filter(ended_at=None, reason=reason[:400]).exists():
+            _judge.hold(writer, lot, reason)
 
 
 def _tell_later_steps(writer: Writer, lot: Lot, vessel: Place, at: datetime) -> None:
@@ -183,39 +160,87 @@ def take(
     *,
     place: Place | None = None,
     rework: bool = False,
-    **fields: Any,
-) -> Draw:
-    """Draw from one lot; refuses a held lot (unless reworked) and more than the book holds.
+) -> Taken:
+    """Draw from one lot, where it stands; ``quantity`` ``None`` is "not measured".
 
-    ``quantity`` ``None`` is "not measured" for a pending lot.
+    Refuses a held lot (unless reworked), more than the book holds, a lot of another facility, and
+    a lot made after the act. Goods in several places are drawn place by place.
     """
-    lot = Lot.objects.get(pk=lot.pk)
-    if not rework:
-        _refuse_held(writer, lot, role, step.started_at)
-    ended = lot.state in (LotState.REJECTED, LotState.VOID)
-    if ended and role not in HELD_MAY:
-        raise OnHold(f"{lot.code} is {lot.get_state_display()}; it may not be used.", field="lots")
+    lot = Lot.objects.select_related("item", "made_by__place").get(pk=lot.pk)
+    writer.own(lot, place)
+    _refuse(writer, step, lot, role, rework)
     amount = quantity or 0
     if lot.remaining is not None and amount > lot.remaining:
-        if role in (DrawRole.AID, DrawRole.PACKAGING, DrawRole.CLEANING):
-            adjust(writer, lot, amount - lot.remaining, place)
-            lot.refresh_from_db()
-        else:
+        if role not in (DrawRole.AID, DrawRole.PACKAGING, DrawRole.CLEANING):
             raise NotEnough(
                 f"{lot.code} holds {_words(lot, lot.remaining)} by the book; "
                 f"you entered {_words(lot, amount)}.",
                 field="quantity",
             )
+        adjust(writer, step, lot, amount - lot.remaining, place)
+        lot.refresh_from_db()
+    total: int | None = 0
+    for where, part in _places_of(lot, amount, place):
+        given = None if quantity is None else part
+        solids = _take_part(writer, step, lot, given, role, where)
+        total = None if total is None or solids is None else total + solids
+        lot.refresh_from_db()
+    if role in SHARES:
+        _inherit(writer, lot, step.made_lots.all())
+    return Taken(quantity, total)
+
+
+def _take_part(
+    writer: Writer, step: Step, lot: Lot, quantity: int | None, role: DrawRole, place: Place | None
+) -> int | None:
     solids = _solids_share(lot, quantity)
-    changes: dict[str, Any] = {"drawn": F("drawn") + amount}
+    changes: dict[str, Any] = {"drawn": F("drawn") + (quantity or 0)}
     if solids:
         changes["solids_drawn"] = F("solids_drawn") + solids
     if role == DrawRole.SHIPPED:
-        changes["shipped"] = F("shipped") + amount
+        changes["shipped"] = F("shipped") + (quantity or 0)
     Lot.objects.filter(pk=lot.pk).update(**changes)
-    _lower_stock(lot, amount, place)
+    row = Stock.objects.filter(lot=lot, place=place).first() if place else None
+    if row is not None and (row.quantity != quantity or lot.made is None):
+        Stock.objects.filter(pk=row.pk).update(quantity=F("quantity") - (quantity or 0))
+    elif row is not None:
+        row.delete()
     writer.touch(lot)
-    return _draw(writer, step, lot, quantity, solids, role, place, **fields)
+    _draw(writer, step, lot, quantity, solids, role, place)
+    return solids
+
+
+def _places_of(lot: Lot, amount: int, place: Place | None) -> list[tuple[Place | None, int]]:
+    """Return where an amount is drawn from, the first place first."""
+    rows = Stock.objects.filter(lot=lot).select_related("place").order_by("pk")
+    standing = [row for row in rows if place is None or row.place_id == place.pk]
+    if not amount:
+        return [(standing[0].place if standing else place, 0)]
+    parts, left = [], amount
+    for row in standing:
+        part = min(left, row.quantity)
+        if part:
+            parts.append((row.place, part))
+            left -= part
+    if lot.made is None and left:
+        return [(standing[0].place if standing else place, amount)]
+    if left:
+        raise NotEnough(
+            f"{lot.code} does not stand there in that quantity; check the place.", field="place"
+        )
+    return parts
+
+
+def _refuse(writer: Writer, step: Step, lot: Lot, role: DrawRole, rework: bool) -> None:
+    if not rework:
+        _refuse_held(writer, lot, role, step.started_at)
+    ended = lot.state in (LotState.REJECTED, LotState.VOID)
+    if lot.state == LotState.VOID or (ended and role not in HELD_MAY):
+        raise OnHold(f"{lot.code} is {lot.get_state_display()}; it may not be used.", field="lots")
+    if step.ended_at is not None and lot.made_at > step.ended_at:
+        raise WrongTime(
+            f"{lot.code} was made only after that time; check the hour of this record.", field="at"
+        )
 
 
 def _words(lot: Lot, quantity: int) -> str:
@@ -232,40 +257,50 @@ def _refuse_held(writer: Writer, lot: Lot, role: DrawRole, at: datetime) -> None
         raise OnHold(f"{lot.code} is on hold: {hold.reason}", field="lots")
 
 
-def _lower_stock(lot: Lot, amount: int, place: Place | None) -> None:
-    rows = Stock.objects.filter(lot=lot).order_by("pk")
-    if place is not None:
-        rows = rows.filter(place=place)
-    left = amount
-    for row in rows:
-        part = min(left, row.quantity)
-        left -= part
-        if row.quantity - part or lot.made is None:
-            Stock.objects.filter(pk=row.pk).update(quantity=F("quantity") - part)
-        else:
-            row.delete()
-    if left:
-        raise NotEnough(
-            f"{lot.code} does not stand there in that quantity; check the place.", field="place"
-        )
+def adjust(
+    writer: Writer, step: Step, lot: Lot, difference: int, place: Place | None
+) -> Adjustment:
+    """Book a difference a step found; solids follow the mass. A void of the step takes it back.
 
-
-def adjust(writer: Writer, lot: Lot, difference: int, place: Place | None) -> None:
-    """Book a counted difference: the journal keeps who and why; solids follow the mass."""
-    lot = Lot.objects.get(pk=lot.pk)
+    Raises OnHold for a void lot.
+    """
+    lot = Lot.objects.select_related("made_by__place").get(pk=lot.pk)
+    if lot.state == LotState.VOID:
+        raise OnHold(f"{lot.code} is void; it has no stock.", field="lots")
+    row = Stock.objects.filter(lot=lot, **({"place": place} if place else {})).first()
+    where = place or (row.place if row else lot.made_by.place)
+    if where is None:
+        raise NotEnough(f"{lot.code} stands nowhere by the book; say where.", field="place")
     solids = 0
     if lot.remaining and lot.solids_remaining is not None:
         solids = int(lot.solids_remaining) * difference // int(lot.remaining)
-    Lot.objects.filter(pk=lot.pk).update(
-        adjusted=F("adjusted") + difference, solids_adjusted=F("solids_adjusted") + solids
+    booked = Adjustment.objects.create(
+        step=step, lot=lot, place=where, quantity=difference, solids=solids
     )
-    row = Stock.objects.filter(lot=lot, **({"place": place} if place else {})).first()
-    place = place or lot.made_by.place
-    if row is not None:
-        Stock.objects.filter(pk=row.pk).update(quantity=F("quantity") + difference)
-    elif place is not None:
-        Stock.objects.create(lot=lot, place=place, quantity=max(difference, 0))
-    writer.touch(lot)
+    book_adjustment(writer, booked)
+    return booked
+
+
+def book_adjustment(writer: Writer, booked: Adjustment, *, back: bool = False) -> None:
+    """Change the book by an adjustment, or back again when its step is voided."""
+    sign = -1 if back else 1
+    Lot.objects.filter(pk=booked.lot_id).update(
+        adjusted=F("adjusted") + sign * booked.quantity,
+        solids_adjusted=F("solids_adjusted") + sign * booked.solids,
+    )
+    change_stock(booked.lot, booked.place, sign * booked.quantity)
+    writer.touch(booked)
+    writer.touch(booked.lot)
+
+
+def change_stock(lot: Lot, place: Place, difference: int) -> None:
+    """Add to what stands in a place; raises NotEnough where less stands there."""
+    row, _ = Stock.objects.get_or_create(lot=lot, place=place, defaults={"quantity": 0})
+    if row.quantity + difference < 0:
+        raise NotEnough(f"Less of {lot.code} stands in {place.name}.", field="place")
+    Stock.objects.filter(pk=row.pk).update(quantity=F("quantity") + difference)
+    if row.quantity + difference == 0 and lot.made is not None:
+        Stock.objects.filter(pk=row.pk).delete()
 
 
 def take_from_vessel(
@@ -284,6 +319,7 @@ def take_from_vessel(
     difference to what was measured. Raises NotEnough above the book unless the difference lies
     within the gauge tolerance and was accepted.
     """
+    writer.own(vessel)
     held = contents(vessel)
     if not held:
         raise NotEnough(f"{vessel.name} is empty by the book.", field="vessel")
@@ -293,17 +329,17 @@ def take_from_vessel(
         mass = None  # the same volume typed twice differs by its rounding alone: it is all of it
     wanted = book if mass is None else mass
     if mass is not None and (emptied or wanted > book) and known:
-        _book_difference(writer, vessel, known, wanted - book, emptied or accept_difference)
+        _book_difference(writer, step, vessel, known, wanted - book, emptied or accept_difference)
         known = [row for row in contents(vessel) if row.lot.made is not None]
         book = sum(row.quantity for row in known)
     parts = rounding.share_out(wanted, [row.quantity for row in known]) if known else []
     total, solids, unknown = 0, 0, len(known) != len(held)
     for row, part in zip(known, parts, strict=True):
         draw_role = role if part else DrawRole.CARRY_OVER
-        draw = take(writer, step, row.lot, part, draw_role, place=vessel)
+        drawn = take(writer, step, row.lot, part, draw_role, place=vessel)
         total += part
-        unknown = unknown or draw.solids is None
-        solids += draw.solids or 0
+        unknown = unknown or drawn.solids is None
+        solids += drawn.solids or 0
     for row in held:
         if row.lot.made is None:
             take(writer, step, row.lot, None, role, place=vessel)
@@ -314,7 +350,12 @@ def take_from_vessel(
 
 
 def _book_difference(
-    writer: Writer, vessel: Place, known: Sequence[Stock], difference: int, accepted: bool
+    writer: Writer,
+    step: Step,
+    vessel: Place,
+    known: Sequence[Stock],
+    difference: int,
+    accepted: bool,
 ) -> None:
     book = sum(row.quantity for row in known)
     tolerance = book * writer.facility.gauge_tolerance_percent // 100
@@ -331,4 +372,4 @@ def _book_difference(
         parts = rounding.share_out(abs(difference), [row.quantity for row in known])
         for row, part in zip(known, parts, strict=True):
             if part:
-                adjust(writer, row.lot, part if difference > 0 else -part, vessel)
+                adjust(writer, step, row.lot, part if difference > 0 else -part, vessel)

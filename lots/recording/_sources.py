@@ -3,7 +3,7 @@
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from lots.models import Draw, DrawRole, Lot, Place, Step
+from lots.models import DrawRole, Lot, Place, Step
 from lots.quantities import rounding
 
 from . import _ledger
@@ -45,8 +45,14 @@ def mixture_brix(vessel: Place) -> float | None:
     return 100 * solids / mass
 
 
-def pieces_or_milligrams(lot: Lot, amount: Typed) -> int | None:
-    """Return ledger units of an amount typed for a lot."""
+def pieces_or_milligrams(lot: Lot, amount: Typed, *, may_be_none: bool = False) -> int | None:
+    """Return ledger units of an amount typed for a lot; all that remains where nothing was typed.
+
+    Refuses nought and less, unless none is a possible answer, as in a count.
+    """
+    lot = Lot.objects.select_related("item").get(pk=lot.pk)
+    if amount.value is not None and (amount.value < 0 or (amount.value == 0 and not may_be_none)):
+        raise RecordingError("Enter an amount above nought.", field="quantity")
     if amount.value is None:
         return None if lot.remaining is None else int(lot.remaining)
     if lot.item.unit == "piece":
@@ -76,12 +82,12 @@ def draw(writer: Writer, step: Step, sources: Sequence[Source]) -> _ledger.Taken
             )
         else:
             quantity = pieces_or_milligrams(source.lot, source.amount)
-            row: Draw = _ledger.take(
+            drawn = _ledger.take(
                 writer, step, source.lot, quantity, source.role, place=source.place
             )
             if source.role not in _ledger.SHARES:
                 continue
-            taken = _ledger.Taken(_mass_of(source.lot, quantity), row.solids)
+            taken = _ledger.Taken(_mass_of(source.lot, quantity), drawn.solids)
         mass = None if mass is None or taken.quantity is None else mass + taken.quantity
         solids = None if solids is None or taken.solids is None else solids + taken.solids
     return _ledger.Taken(mass, solids)

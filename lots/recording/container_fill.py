@@ -9,7 +9,7 @@ from lots.models import DrawRole, Item, Lot, Place, PrintedCode, Step, StepKind
 from lots.quantities import rounding
 from lots.rules.verdict import Stage
 
-from . import _judge, _ledger, _sources
+from . import _codes, _judge, _ledger, _sources
 from ._door import Writer
 from .context import Context
 from .errors import RecordingError
@@ -53,7 +53,7 @@ def open_container_fill(
 ) -> tuple[Step, PrintedCode]:
     """Open a run and reserve its code, so that the coder can be set before the first jar."""
     with context.open("container fill opened") as writer:
-        code = _ledger.reserve_code(writer, product, at, printed_code)
+        code = _codes.reserve_code(writer, product, at, printed_code)
         step = writer.step(
             StepKind.CONTAINER_FILL,
             at,
@@ -106,7 +106,7 @@ def record_container_fill(
             people=people,
             detail={"net_sample": run.net_sample, "rejected": run.rejected},
         )
-        code = _ledger.reserve_code(writer, run.product, at, run.printed_code)
+        code = _codes.reserve_code(writer, run.product, at, run.printed_code)
         _fill(writer, step, sources, run, code)
         return step
 

@@ -7,20 +7,24 @@ from django.db.models import F
 from django.utils import timezone
 
 from lots.models import (
+    Adjustment,
     CorrectiveAction,
     Draw,
     DrawRole,
     Hold,
+    ItemKind,
     Lot,
     LotState,
+    Place,
     Step,
+    StepKind,
     Stock,
     UnpostedEntry,
 )
 from lots.rules.roles import Action
-from lots.tracing.cone import forward
+from lots.tracing.cone import back, forward
 
-from . import _judge
+from . import _judge, _ledger
 from ._door import Writer
 from .context import Context
 from .errors import RecordingError, StillNeeded
@@ -40,6 +44,7 @@ def place_hold(
     if not reason.strip():
         raise RecordingError("Say why the lot is held.", field="reason")
     with context.open("hold", Action.HOLD) as writer:
+        writer.own(lot)
         writer.label = f"Hold {lot.code}"
         held = [_judge.hold(writer, lot, reason, official=official)]
         if descendants:
@@ -76,6 +81,7 @@ def complete_action(
     if not all(part.strip() for part in (cause, correction, prevention, evaluation)):
         raise RecordingError("Fill in cause, correction, prevention and evaluation of the food.")
     with context.open("corrective action", Action.RELEASE) as writer:
+        writer.own(action.hold.lot)
         CorrectiveAction.objects.filter(pk=action.pk).update(
             cause=cause,
             correction=correction,
@@ -95,7 +101,10 @@ def decide_hold(context: Context, *, hold: Hold, decision: str, reason: str, sho
     if not reason.strip():
         raise RecordingError("Give the reason for the decision.", field="reason")
     with context.open(f"hold {decision}", Action.RELEASE) as writer:
-        hold = Hold.objects.select_related("lot").get(pk=hold.pk)
+        hold = Hold.objects.select_related("lot__item", "lot__made_by").get(pk=hold.pk)
+        writer.own(hold.lot)
+        if decision == "release":
+            _refuse_running(hold.lot)
         _refuse_decision(hold, decision, shown)
         writer.label = f"{decision.capitalize()} {hold.lot.code}"
         Hold.objects.filter(pk=hold.pk).update(
@@ -107,9 +116,10 @@ def decide_hold(context: Context, *, hold: Hold, decision: str, reason: str, sho
         )
         writer.touch(hold)
         lot = hold.lot
-        if decision == "reject":
+        ended = lot.state in (LotState.REJECTED, LotState.VOID)
+        if decision == "reject" and not ended:
             Lot.objects.filter(pk=lot.pk).update(state=LotState.REJECTED)
-        elif not lot.holds.filter(ended_at=None).exists():
+        elif not ended and not lot.holds.filter(ended_at=None).exists():
             Lot.objects.filter(pk=lot.pk).update(state=LotState.RELEASED)
         return writer.touch(Lot.objects.get(pk=lot.pk))
 
@@ -125,10 +135,22 @@ def _refuse_decision(hold: Hold, decision: str, shown: str) -> None:
         raise RecordingError("Complete the corrective action first.")
 
 
+def _refuse_running(lot: Lot) -> None:
+    """Refuse to release packed goods while a step behind them is open."""
+    if lot.item.kind != ItemKind.PACKED:
+        return
+    behind = back(lot.made_by_id).steps
+    running = Step.objects.filter(pk__in=behind, ended_at=None, voided_at=None).first()
+    if running is not None:
+        raise RecordingError(f"{running} behind {lot.code} is still open; close it first.")
+
+
 def release_lot(context: Context, *, lot: Lot, reason: str, shown: str) -> Lot:
     """Release a waiting lot by a lead's signed decision."""
     with context.open("release", Action.RELEASE) as writer:
-        lot = Lot.objects.get(pk=lot.pk)
+        lot = Lot.objects.select_related("item").get(pk=lot.pk)
+        writer.own(lot)
+        _refuse_running(lot)
         if lot.holds.filter(ended_at=None).exists():
             raise RecordingError("Decide the hold first.")
         if lot.state != LotState.WAITING:
@@ -157,15 +179,14 @@ def void_step(context: Context, *, step: Step, reason: str) -> Step:
         step = Step.objects.get(pk=step.pk, facility=writer.facility)
         if step.voided_at is not None:
             raise RecordingError("This record is void already.")
-        used = [
-            lot.code for lot in step.made_lots.filter(draws__ended_at=None, draws__isnull=False)
-        ]
-        if used:
-            raise StillNeeded(
-                f"Later records drew {', '.join(sorted(set(used)))}; void those first."
-            )
-        for draw in step.draws.filter(ended_at=None).select_related("lot"):
+        _refuse_needed(step)
+        for draw in step.draws.filter(ended_at=None).select_related("lot__made_by", "from_place"):
             _give_back(writer, draw)
+        for booked in step.adjustments.filter(ended_at=None).select_related("lot", "place"):
+            Adjustment.objects.filter(pk=booked.pk).update(ended_at=writer.now, ended_by=writer.by)
+            _ledger.book_adjustment(writer, booked, back=True)
+        if step.kind == StepKind.MOVE:
+            _move_back(writer, step)
         for lot in step.made_lots.all():
             Stock.objects.filter(lot=lot).delete()
             Lot.objects.filter(pk=lot.pk).update(state=LotState.VOID)
@@ -180,12 +201,32 @@ def void_step(context: Context, *, step: Step, reason: str) -> Step:
         return writer.touch(step)
 
 
+def _refuse_needed(step: Step) -> None:
+    """Refuse a void that would leave later records without their source."""
+    drawn = step.made_lots.filter(draws__ended_at=None, draws__isnull=False)
+    if used := sorted({lot.code for lot in drawn}):
+        raise StillNeeded(f"Later records drew {', '.join(used)}; void those first.")
+    if Draw.objects.filter(returns__step=step, ended_at=None).exists():
+        raise StillNeeded("Goods of this sale came back; void the return first.")
+
+
+def _move_back(writer: Writer, step: Step) -> None:
+    """Undo a move; raises NotEnough where the goods have gone on since."""
+    lot = Lot.objects.get(uuid=step.detail["lot_uuid"])
+    come_from = Place.objects.get(uuid=step.detail["from_uuid"])
+    assert step.place is not None  # noqa: S101 - a move always has its place
+    _ledger.change_stock(lot, step.place, -step.detail["quantity"])
+    _ledger.change_stock(lot, come_from, step.detail["quantity"])
+    writer.touch(lot)
+
+
 def _give_back(writer: Writer, draw: Draw) -> None:
     Draw.objects.filter(pk=draw.pk).update(ended_at=writer.now, ended_by=writer.by)
     writer.touch(draw)
     amount, solids = draw.quantity or 0, draw.solids or 0
     if draw.role == DrawRole.RETURNED:
         Lot.objects.filter(pk=draw.lot_id).update(returned=F("returned") - amount)
+        writer.touch(draw.lot)
         return
     shipped = amount if draw.role == DrawRole.SHIPPED else 0
     Lot.objects.filter(pk=draw.lot_id).update(
@@ -193,12 +234,8 @@ def _give_back(writer: Writer, draw: Draw) -> None:
         drawn=F("drawn") - amount,
         solids_drawn=F("solids_drawn") - solids,
     )
-    place = draw.from_place or draw.lot.made_by.place
-    if place is not None:
-        row, _ = Stock.objects.get_or_create(
-            lot_id=draw.lot_id, place=place, defaults={"quantity": 0}
-        )
-        Stock.objects.filter(pk=row.pk).update(quantity=F("quantity") + amount)
+    if draw.from_place is not None:
+        _ledger.change_stock(draw.lot, draw.from_place, amount)
     writer.touch(draw.lot)
 
 
@@ -222,6 +259,7 @@ def keep_unposted(
             recorded_at=writer.now,
             recorded_by=writer.by,
         )
+        writer.own(*lots)
         entry.lots.set(lots)
         writer.label = f"Kept, not posted: {kind}"
         return writer.touch(entry)
@@ -236,7 +274,11 @@ def settle_unposted(
     if not reason.strip():
         raise RecordingError("Give the reason.", field="reason")
     with context.open("unposted entry settled", Action.AMEND) as writer:
-        UnpostedEntry.objects.filter(pk=entry.pk, settled_at=None).update(
+        writer.own(entry)
+        entry = UnpostedEntry.objects.get(pk=entry.pk)
+        if entry.settled_at is not None:
+            raise RecordingError("This entry was settled already.")
+        UnpostedEntry.objects.filter(pk=entry.pk).update(
             settled_at=writer.now,
             settled_by=writer.by,
             settled_as=settled_as,

@@ -30,6 +30,10 @@ class WrongTime(RecordingError):
     """The stated time cannot stand: in the future, or an end before its start."""
 
 
+class OtherFacility(RecordingError):
+    """A row that belongs to another facility."""
+
+
 class CodeTaken(RecordingError):
     """A code that is already on other goods."""
 

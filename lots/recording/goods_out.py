@@ -8,6 +8,7 @@ from django.db.models import F, Sum
 from lots.models import Draw, DrawRole, Lot, LotState, Partner, Place, Step, StepKind
 
 from . import _judge, _ledger, _sources
+from ._door import Writer
 from .context import Context
 from .errors import NotReleased, OnHold, RecordingError
 from .measures import NOT_MEASURED, Typed
@@ -54,8 +55,7 @@ def record_sale(
         )
         for line in sold:
             lot = Lot.objects.get(pk=line.lot.pk)
-            if lot.facility_id != writer.facility.pk:
-                raise RecordingError("That lot is another facility's; receive it first.")
+            writer.own(lot)
             hold = lot.holds.filter(ended_at=None).first()
             if hold is not None:
                 raise OnHold(f"{lot.code} is on hold: {hold.reason}", field="lots")
@@ -84,19 +84,8 @@ def record_customer_return(
 ) -> Step:
     """Take goods back: a new lot on hold with the same printed code, never more than was sold."""
     with context.open("customer return") as writer:
-        line = Draw.objects.filter(
-            step=sale, lot=lot, role=DrawRole.SHIPPED, ended_at=None, facility=writer.facility
-        ).first()
-        if line is None:
-            raise RecordingError(f"{lot.code} was not on that sale.", field="lot")
-        quantity = _sources.pieces_or_milligrams(lot, amount) or 0
-        before = Draw.objects.filter(returns=line, ended_at=None).aggregate(all=Sum("quantity"))
-        if quantity <= 0 or quantity + (before["all"] or 0) > (line.quantity or 0):
-            raise RecordingError(
-                f"{line.quantity} of {lot.code} went out on that sale; "
-                f"{before['all'] or 0} came back already.",
-                field="quantity",
-            )
+        writer.own(lot, into)
+        line, quantity = _returned_line(writer, sale, lot, amount)
         step = writer.step(
             StepKind.CUSTOMER_RETURN,
             at,
@@ -106,6 +95,7 @@ def record_customer_return(
             detail={"reason": reason},
         )
         Lot.objects.filter(pk=lot.pk).update(returned=F("returned") + quantity)
+        writer.touch(lot)
         solids = None if lot.piece_solids_mg is None else 0
         _ledger._draw(writer, step, lot, quantity, solids, DrawRole.RETURNED, None, returns=line)
         back = _ledger.make(
@@ -122,6 +112,25 @@ def record_customer_return(
         )
         _judge.hold(writer, back, f"Returned by the customer: {reason}")
         return step
+
+
+def _returned_line(writer: Writer, sale: Step, lot: Lot, amount: Typed) -> tuple[Draw, int]:
+    """Return the sale line goods come back from and how many; never more than went out."""
+    lines = Draw.objects.filter(
+        step=sale, lot=lot, role=DrawRole.SHIPPED, ended_at=None, facility=writer.facility
+    ).order_by("pk")
+    if not lines:
+        raise RecordingError(f"{lot.code} was not on that sale.", field="lot")
+    quantity = _sources.pieces_or_milligrams(lot, amount) or 0
+    sold = back = 0
+    for line in lines:
+        came = Draw.objects.filter(returns=line, ended_at=None).aggregate(all=Sum("quantity"))
+        sold, back = sold + (line.quantity or 0), back + (came["all"] or 0)
+        if 0 < quantity <= (line.quantity or 0) - (came["all"] or 0):
+            return line, quantity
+    raise RecordingError(
+        f"{sold} of {lot.code} went out on that sale; {back} came back already.", field="quantity"
+    )
 
 
 def record_removal(

@@ -135,6 +135,8 @@ def add_partner(context: Context, **fields: Any) -> Partner:
 
 def add_instrument(context: Context, **fields: Any) -> Instrument:
     """Register a hydrometer, refractometer, thermometer, scale or colour meter."""
+    if Instrument.objects.filter(facility=context.facility, tag=fields["tag"]).exists():
+        raise RecordingError(f"{fields['tag']} is registered already.", field="tag")
     return _register(context, Instrument, "instrument added", fields)
 
 

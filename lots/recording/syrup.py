@@ -200,6 +200,7 @@ def record_grade_reading(
 ) -> Step:
     """Record a grading of one lot: colour, density, flavour, clarity, defects with intensity."""
     with context.open("grade reading") as writer:
+        writer.own(lot)
         step = writer.step(
             StepKind.GRADE_READING,
             at,

@@ -18,6 +18,7 @@ def record_move(
 ) -> Step:
     """Move goods between places: only where they stand changes."""
     with context.open("move") as writer:
+        writer.own(lot, come_from, to)
         step = writer.step(
             StepKind.MOVE,
             at,
@@ -35,11 +36,14 @@ def record_move(
                 f"Only {_ledger._words(lot, row.quantity)} of {lot.code} stand there.",
                 field="amount",
             )
-        Stock.objects.filter(pk=row.pk).update(quantity=row.quantity - quantity)
-        if row.quantity == quantity:
-            Stock.objects.filter(pk=row.pk).delete()
-        target, _ = Stock.objects.get_or_create(lot=lot, place=to, defaults={"quantity": 0})
-        Stock.objects.filter(pk=target.pk).update(quantity=target.quantity + quantity)
+        _ledger.change_stock(lot, come_from, -quantity)
+        _ledger.change_stock(lot, to, quantity)
+        step.detail |= {
+            "quantity": quantity,
+            "lot_uuid": str(lot.uuid),
+            "from_uuid": str(come_from.uuid),
+        }
+        step.save(update_fields=["detail"])
         writer.touch(lot)
         return step
 
@@ -49,6 +53,8 @@ def record_split(
 ) -> Step:
     """Split part of a packed lot into a sub-lot that keeps the printed code, held if asked."""
     with context.open("split") as writer:
+        writer.own(lot)
+        lot = Lot.objects.select_related("item").get(pk=lot.pk)
         row = Stock.objects.filter(lot=lot, quantity__gt=0).select_related("place").first()
         step = writer.step(
             StepKind.SPLIT,
@@ -85,6 +91,7 @@ def record_rework(
 ) -> Step:
     """Open packed goods back to bulk: pieces × mass and solids a piece; a held lot may go."""
     with context.open("rework") as writer:
+        writer.own(lot)
         step = writer.step(StepKind.REWORK, at, ended_at=at, place=into)
         pieces = _sources.pieces_or_milligrams(lot, amount) or 0
         if lot.piece_mg is None:
@@ -107,15 +114,15 @@ def record_count(
     context: Context, *, at: datetime, lot: Lot, place: Place, counted: Typed, reason: str
 ) -> Step:
     """Set the book to a count; beyond the gauge tolerance a lead makes it."""
-    stock = Stock.objects.filter(lot=lot, place=place).first()
-    book = stock.quantity if stock else 0
-    quantity = _sources.pieces_or_milligrams(lot, counted)
-    if counted.value is None or quantity is None:
-        raise RecordingError("Enter what was counted.", field="counted")
-    limit = book * context.facility.gauge_tolerance_percent // 100
-    beyond = abs(quantity - book) > limit
-    action = Action.ADJUST_BEYOND_TOLERANCE if beyond else Action.RECORD
-    with context.open("count adjustment", action) as writer:
+    with context.open("count adjustment") as writer:
+        writer.own(lot, place)
+        quantity = _sources.pieces_or_milligrams(lot, counted, may_be_none=True)
+        if counted.value is None or quantity is None:
+            raise RecordingError("Enter what was counted.", field="counted")
+        stock = Stock.objects.filter(lot=lot, place=place).first()
+        book = stock.quantity if stock else 0
+        if abs(quantity - book) > book * writer.facility.gauge_tolerance_percent // 100:
+            writer.require(Action.ADJUST_BEYOND_TOLERANCE)
         step = writer.step(
             StepKind.ADJUSTMENT,
             at,
@@ -123,7 +130,7 @@ def record_count(
             place=place,
             detail={"book": book, "counted": quantity, "lot": lot.code, "reason": reason},
         )
-        _ledger.adjust(writer, lot, quantity - book, place)
+        _ledger.adjust(writer, step, lot, quantity - book, place)
         return step
 
 

@@ -1,11 +1,16 @@
 """Re-verify the journal and re-derive every stored quantity; name the first row that is wrong."""
 
 import hashlib
+import json
 from collections.abc import Iterator
+from typing import Any
 
+from django.apps import apps
 from django.db.models import F, Sum
 
-from lots.models import Chain, Draw, DrawRole, JournalEntry, Lot, LotState, Stock
+from lots.models import Adjustment, Chain, Draw, DrawRole, JournalEntry, Lot, LotState, Stock
+
+from .images import after_images
 
 
 def chain_faults(chain: Chain) -> Iterator[str]:
@@ -24,15 +29,52 @@ def chain_faults(chain: Chain) -> Iterator[str]:
         if digest != entry.digest:
             yield f"{where}: its text was changed after it was written."
             return
+        told = json.loads(entry.body)
+        for name in ("action", "label"):
+            if getattr(entry, name) != told.get(name, getattr(entry, name))[:200]:
+                yield f"{where}: its {name} was changed after it was written."
+                return
         previous, expected = digest, expected + 1
     if chain.seq != expected - 1 or chain.head != previous:
         yield f"{chain.name}: the head does not match the last entry."
+
+
+def image_faults() -> Iterator[str]:
+    """Yield each row that differs from what the journal last said of it, or that it never told."""
+    last: dict[tuple[str, str], str] = {}
+    for body in (
+        JournalEntry.objects.order_by("chain_id", "seq")
+        .values_list("body", flat=True)
+        .iterator(500)
+    ):
+        for image in json.loads(body)["rows"]:
+            if "uuid" in image:
+                last[image["table"], image["uuid"]] = _fingerprint(image)
+    for model in apps.get_app_config("lots").get_models():
+        if not any(field.name == "uuid" for field in model._meta.fields):
+            continue
+        keys = list(model._base_manager.order_by("pk").values_list("pk", flat=True))
+        for start in range(0, len(keys), 500):
+            rows = model._base_manager.filter(pk__in=keys[start : start + 500])
+            for image in after_images(rows):
+                told = last.get((image["table"], image["uuid"]))
+                name = image.get("code") or image.get("name") or image["uuid"]
+                if told is None:
+                    yield f"{image['table']} {name}: the journal never told of it."
+                elif told != _fingerprint(image):
+                    yield f"{image['table']} {name}: differs from what the journal last said of it."
+
+
+def _fingerprint(image: dict[str, Any]) -> str:
+    text = json.dumps(image, sort_keys=True, ensure_ascii=False)
+    return hashlib.sha256(text.encode()).hexdigest()
 
 
 def ledger_faults() -> Iterator[str]:
     """Yield each lot whose stored quantities differ from its live draws and stock rows."""
     drawn = _sums(Draw.objects.exclude(role=DrawRole.RETURNED))
     returned = _sums(Draw.objects.filter(role=DrawRole.RETURNED))
+    adjusted = _sums(Adjustment.objects.all())
     shipped = _sums(Draw.objects.filter(role=DrawRole.SHIPPED))
     stock = dict(
         Stock.objects.values_list("lot").annotate(total=Sum("quantity")).values_list("lot", "total")
@@ -43,6 +85,7 @@ def ledger_faults() -> Iterator[str]:
             "solids drawn": (lot.solids_drawn, drawn.get(lot.pk, (0, 0))[1]),
             "shipped": (lot.shipped, shipped.get(lot.pk, (0, 0))[0]),
             "returned": (lot.returned, returned.get(lot.pk, (0, 0))[0]),
+            "adjusted": (lot.adjusted, adjusted.get(lot.pk, (0, 0))[0]),
         }
         if lot.remaining is not None and lot.state != LotState.VOID:
             found["stock by place"] = (int(lot.remaining), stock.get(lot.pk, 0))
@@ -54,10 +97,10 @@ def ledger_faults() -> Iterator[str]:
         yield f"Draw {uuid}: does not come from its lot's maker."
 
 
-def _sums(draws: object) -> dict[int, tuple[int, int]]:
-    rows = (
-        draws.filter(ended_at=None)  # type: ignore[attr-defined]
+def _sums(rows: Any) -> dict[int, tuple[int, int]]:
+    sums = (
+        rows.filter(ended_at=None)
         .values_list("lot")
         .annotate(mass=Sum("quantity"), solids=Sum("solids"))
     )
-    return {lot: (mass or 0, solids or 0) for lot, mass, solids in rows}
+    return {lot: (mass or 0, solids or 0) for lot, mass, solids in sums}

@@ -7,9 +7,10 @@ import pytest
 from django.apps import apps
 
 from lots.models import JournalEntry
-from lots.recording import boil, decisions, goods_out, journal, setup, syrup, upkeep
+from lots.recording import boil, decisions, goods_out, setup, syrup, upkeep
 from lots.recording._sources import FromLot
 from lots.recording.measures import Typed
+from lots.tracing.images import after_images
 from tests.cases.tools import open_boil
 from tests.factories import pieces
 
@@ -33,7 +34,7 @@ def untold():
     for model in apps.get_app_config("lots").get_models():
         if all(field.name != "uuid" for field in model._meta.fields):
             continue
-        for image in json.loads(json.dumps(journal.after_images(model._base_manager.all()))):
+        for image in json.loads(json.dumps(after_images(model._base_manager.all()))):
             said = told.get((image["table"], image["uuid"]), {})
             changed = {key for key, value in image.items() if said.get(key) != value}
             if changed:

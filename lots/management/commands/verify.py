@@ -24,4 +24,8 @@ class Command(BaseCommand):
             self.stdout.write(f"{chain.name}: {chain.seq} entries verified, head {chain.head}")
         for fault in verify.ledger_faults():
             raise CommandError(fault)
-        self.stdout.write("Every stored quantity agrees with its draws and stock.")
+        for fault in verify.image_faults():
+            raise CommandError(fault)
+        self.stdout.write(
+            "Every stored quantity agrees with its draws and stock, every row with the journal."
+        )
