@@ -28,6 +28,7 @@ def _washed_between(place: Place, after: datetime, before: datetime) -> bool:
 
 def of_vessel(writer: Writer, step: Step, vessel: Place) -> None:
     """Draw what an empty vessel last held, unless it was washed since."""
+    writer.own(vessel)
     if _ledger.contents(vessel):
         return
     last = (
@@ -48,6 +49,7 @@ def of_vessel(writer: Writer, step: Step, vessel: Place) -> None:
 
 def of_machine(writer: Writer, step: Step, machine: Place) -> None:
     """Draw what the last run of a press or RO left on it, unless it was washed since."""
+    writer.own(machine)
     last = (
         Step.objects.filter(
             place=machine, kind=step.kind, started_at__lte=step.started_at, voided_at=None
