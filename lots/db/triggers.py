@@ -16,6 +16,7 @@ KEPT_TABLES = (
     "lots_printedcode",
     "lots_amendment",
     "lots_adjustment",
+    "lots_vesseltake",
 )
 NEVER_UPDATED = ("lots_journalentry", "lots_check", "lots_printedcode", "lots_amendment")
 
@@ -31,6 +32,7 @@ DRAW_FIXED = (
     "solids",
     "returns_id",
     "from_place_id",
+    "asked_id",
     "recorded_at",
 )
 

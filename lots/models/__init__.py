@@ -4,7 +4,7 @@ from .check import Check, CorrectiveAction, Hold, UnpostedEntry
 from .facility import Chain, Counter, Facility, Membership, User
 from .item import LIQUIDS, MATERIALS, Item, ItemKind, PrintedCode, Unit
 from .journal import AccessLog, ClientEntry, JournalEntry
-from .lot import Adjustment, Draw, DrawRole, GoodsKind, Lot, LotState, Stock
+from .lot import Adjustment, Draw, DrawRole, GoodsKind, Lot, LotState, Stock, VesselTake
 from .place import VESSELS, Instrument, Partner, PartnerKind, Place, PlaceKind
 from .step import MAKERS, Amendment, Reading, ReadingKind, Step, StepEvent, StepKind
 
@@ -47,4 +47,5 @@ __all__ = [
     "Unit",
     "UnpostedEntry",
     "User",
+    "VesselTake",
 ]

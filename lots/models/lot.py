@@ -54,6 +54,10 @@ class Lot(models.Model):
     made_at = models.DateTimeField()
     best_before_date = models.DateField(null=True, blank=True)
     estimated = models.BooleanField(default=False)
+    # Where it was first put, and whether its quantity follows from what its step drew: then a
+    # re-division of the step's draws re-makes it.
+    put_in = models.ForeignKey(Place, null=True, blank=True, on_delete=models.PROTECT)
+    derived = models.BooleanField(default=False)
     typed_value = models.CharField(max_length=24, blank=True)
     typed_unit = models.CharField(max_length=8, blank=True)
     made = _whole(null=True)
@@ -111,6 +115,28 @@ class Lot(models.Model):
         return self.code
 
 
+class VesselTake(models.Model):
+    """What a step asked of a vessel, as typed: a re-division asks the same again.
+
+    No amount is all of it. The draws are the answer; this is the question.
+    """
+
+    uuid = models.UUIDField(default=uuid.uuid4, unique=True, editable=False)
+    step = models.ForeignKey(Step, on_delete=models.PROTECT, related_name="takes")
+    vessel = models.ForeignKey(Place, on_delete=models.PROTECT, related_name="takes")
+    at = models.DateTimeField()
+    typed_value = models.CharField(max_length=24, blank=True)
+    typed_unit = models.CharField(max_length=8, blank=True)
+    emptied = models.BooleanField(default=False)
+    accept_difference = models.BooleanField(default=False)
+
+    class Meta:
+        indexes = [models.Index(fields=["vessel", "at"], name="take_by_vessel")]
+
+    def __str__(self) -> str:
+        return f"{self.vessel_id} at {self.at:%Y-%m-%d %H:%M}"
+
+
 class DrawRole(models.TextChoices):
     INGREDIENT = "ingredient", "Ingredient"
     AID = "aid", "Processing aid"
@@ -146,6 +172,7 @@ class Draw(models.Model):
     solids = models.BigIntegerField(null=True)
     returns = models.ForeignKey("self", null=True, on_delete=models.PROTECT)
     from_place = models.ForeignKey(Place, null=True, on_delete=models.PROTECT)
+    asked = models.ForeignKey(VesselTake, null=True, on_delete=models.PROTECT, related_name="draws")
     recorded_at = models.DateTimeField()
     ended_at = models.DateTimeField(null=True)
     ended_by = models.ForeignKey(User, null=True, on_delete=models.PROTECT)

@@ -6,7 +6,7 @@ On SQLite the IMMEDIATE transaction is the lock; on PostgreSQL the head row is.
 
 import hashlib
 import json
-from collections.abc import Iterator
+from collections.abc import Callable, Iterator
 from contextlib import contextmanager
 from datetime import datetime, timedelta
 from typing import Any, TypeVar
@@ -15,7 +15,18 @@ from uuid import UUID
 from django.db import models, transaction
 from django.utils import timezone
 
-from lots.models import Chain, ClientEntry, Counter, Facility, Membership, Step, StepKind, User
+from lots.models import (
+    Chain,
+    ClientEntry,
+    Counter,
+    Facility,
+    Membership,
+    Place,
+    Step,
+    StepKind,
+    User,
+    VesselTake,
+)
 from lots.rules.roles import Action, Role, may
 
 from . import journal
@@ -51,6 +62,10 @@ class Writer:
         self.touched: list[models.Model] = []
         self.client: tuple[UUID, str] | None = None
         self.answer: Step | None = None
+        # A confirmed re-division: what was taken back, asked again when the record is written.
+        self.redividing = False
+        self.rewound: dict[int, VesselTake] = {}
+        self.before_arrival: Callable[[Place, datetime], None] = lambda place, at: None
 
     def touch(self, row: Row) -> Row:
         """Remember a written row for the journal."""

@@ -3,12 +3,12 @@
 Quantities are whole milligrams (liquids, materials by weight) or whole pieces.
 """
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable
 from dataclasses import dataclass
 from datetime import datetime
 from typing import Any
 
-from django.db.models import F, Q
+from django.db.models import F
 
 from lots.models import (
     Adjustment,
@@ -21,6 +21,7 @@ from lots.models import (
     Place,
     Step,
     Stock,
+    VesselTake,
 )
 from lots.quantities import rounding
 from lots.tracing.cone import reaches
@@ -56,6 +57,8 @@ def make(
     """Make one lot and put it where it stands; ``quantity`` ``None`` is pending."""
     moment = at or step.started_at
     writer.own(item, place)
+    if place is not None and place.is_vessel and item.is_liquid:
+        writer.before_arrival(place, moment)
     code = fields.pop("code", "") or _codes.internal_code(writer, item, moment)
     if Lot.objects.filter(facility=writer.facility, code=code).exists():
         raise CodeTaken(f"{code} is already a lot here.", field="code")
@@ -67,6 +70,7 @@ def make(
         made_at=moment,
         made=quantity,
         solids_made=solids,
+        put_in=place,
         goods_kind=fields.pop("goods_kind", GoodsKind.OTHER),
         **fields,
     )
@@ -93,6 +97,8 @@ def _inherit(writer: Writer, source: Lot, made: Iterable[Lot]) -> None:
 
 def _tell_later_steps(writer: Writer, lot: Lot, vessel: Place, at: datetime) -> None:
     """Keep a late lot inside every trace: later steps that drew there carry it over."""
+    if writer.redividing:
+        return
     later = (
         Draw.objects.filter(from_place=vessel, ended_at=None, step__started_at__gt=at)
         .exclude(step=lot.made_by)
@@ -102,17 +108,6 @@ def _tell_later_steps(writer: Writer, lot: Lot, vessel: Place, at: datetime) -> 
     for step in Step.objects.filter(pk__in=list(later)):
         if not reaches(step.pk, lot.made_by_id):
             _draw(writer, step, lot, 0, 0, DrawRole.CARRY_OVER, vessel)
-
-
-def contents(vessel: Place) -> list[Stock]:
-    """Return what a vessel holds now, oldest first, lots of unknown quantity included."""
-    return list(
-        Stock.objects.filter(place=vessel)
-        .filter(Q(quantity__gt=0) | Q(lot__made=None))
-        .exclude(lot__state=LotState.VOID)
-        .select_related("lot__item", "place")
-        .order_by("lot__made_at", "lot_id")
-    )
 
 
 def _draw(
@@ -160,6 +155,7 @@ def take(
     *,
     place: Place | None = None,
     rework: bool = False,
+    asked: VesselTake | None = None,
 ) -> Taken:
     """Draw from one lot, where it stands; ``quantity`` ``None`` is "not measured".
 
@@ -182,7 +178,7 @@ def take(
     total: int | None = 0
     for where, part in _places_of(lot, amount, place):
         given = None if quantity is None else part
-        solids = _take_part(writer, step, lot, given, role, where)
+        solids = _take_part(writer, step, lot, given, role, where, asked)
         total = None if total is None or solids is None else total + solids
         lot.refresh_from_db()
     if role in SHARES:
@@ -191,7 +187,13 @@ def take(
 
 
 def _take_part(
-    writer: Writer, step: Step, lot: Lot, quantity: int | None, role: DrawRole, place: Place | None
+    writer: Writer,
+    step: Step,
+    lot: Lot,
+    quantity: int | None,
+    role: DrawRole,
+    place: Place | None,
+    asked: VesselTake | None,
 ) -> int | None:
     solids = _solids_share(lot, quantity)
     changes: dict[str, Any] = {"drawn": F("drawn") + (quantity or 0)}
@@ -206,7 +208,7 @@ def _take_part(
     elif row is not None:
         row.delete()
     writer.touch(lot)
-    _draw(writer, step, lot, quantity, solids, role, place)
+    _draw(writer, step, lot, quantity, solids, role, place, asked=asked)
     return solids
 
 
@@ -303,73 +305,27 @@ def change_stock(lot: Lot, place: Place, difference: int) -> None:
         Stock.objects.filter(pk=row.pk).delete()
 
 
-def take_from_vessel(
-    writer: Writer,
-    step: Step,
-    vessel: Place,
-    mass: int | None,
-    *,
-    emptied: bool = False,
-    accept_difference: bool = False,
-    role: DrawRole = DrawRole.INGREDIENT,
-) -> Taken:
-    """Draw every lot of a vessel in proportion (well mixed); ``mass`` in milligrams.
-
-    ``mass`` ``None`` takes all. ``emptied`` takes each lot to exactly zero and books the
-    difference to what was measured. Raises NotEnough above the book unless the difference lies
-    within the gauge tolerance and was accepted.
-    """
-    writer.own(vessel)
-    held = contents(vessel)
-    if not held:
-        raise NotEnough(f"{vessel.name} is empty by the book.", field="vessel")
-    known = [row for row in held if row.lot.made is not None]
-    book = sum(row.quantity for row in known)
-    if mass is not None and abs(mass - book) * 1000 <= book:
-        mass = None  # the same volume typed twice differs by its rounding alone: it is all of it
-    wanted = book if mass is None else mass
-    if mass is not None and (emptied or wanted > book) and known:
-        _book_difference(writer, step, vessel, known, wanted - book, emptied or accept_difference)
-        known = [row for row in contents(vessel) if row.lot.made is not None]
-        book = sum(row.quantity for row in known)
-    parts = rounding.share_out(wanted, [row.quantity for row in known]) if known else []
-    total, solids, unknown = 0, 0, len(known) != len(held)
-    for row, part in zip(known, parts, strict=True):
-        draw_role = role if part else DrawRole.CARRY_OVER
-        drawn = take(writer, step, row.lot, part, draw_role, place=vessel)
-        total += part
-        unknown = unknown or drawn.solids is None
-        solids += drawn.solids or 0
-    for row in held:
-        if row.lot.made is None:
-            take(writer, step, row.lot, None, role, place=vessel)
-            if mass is None or emptied:
-                Stock.objects.filter(pk=row.pk).delete()
-    pending = any(row.lot.made is None for row in held)
-    return Taken(None if pending else total, None if unknown else solids)
+def take_back_adjustment(writer: Writer, booked: Adjustment) -> None:
+    """End an adjustment and take its difference off the book."""
+    Adjustment.objects.filter(pk=booked.pk).update(ended_at=writer.now, ended_by=writer.by)
+    book_adjustment(writer, booked, back=True)
 
 
-def _book_difference(
-    writer: Writer,
-    step: Step,
-    vessel: Place,
-    known: Sequence[Stock],
-    difference: int,
-    accepted: bool,
-) -> None:
-    book = sum(row.quantity for row in known)
-    tolerance = book * writer.facility.gauge_tolerance_percent // 100
-    if difference > 0 and (not accepted or difference > tolerance):
-        kilograms = rounding.fixed(book / 1_000_000, 1)
-        entered = rounding.fixed((book + difference) / 1_000_000, 1)
-        raise NotEnough(
-            f"{vessel.name} holds {kilograms} kg by the book; you entered {entered} kg. "
-            "Check the gauge, or tick “record the difference” if it lies within "
-            f"{writer.facility.gauge_tolerance_percent} %.",
-            field="quantity",
-        )
-    if difference > 0 or accepted:
-        parts = rounding.share_out(abs(difference), [row.quantity for row in known])
-        for row, part in zip(known, parts, strict=True):
-            if part:
-                adjust(writer, step, row.lot, part if difference > 0 else -part, vessel)
+def give_back(writer: Writer, draw: Draw) -> None:
+    """End a draw: what it took stands again where it was drawn."""
+    Draw.objects.filter(pk=draw.pk).update(ended_at=writer.now, ended_by=writer.by)
+    writer.touch(draw)
+    amount, solids = draw.quantity or 0, draw.solids or 0
+    if draw.role == DrawRole.RETURNED:
+        Lot.objects.filter(pk=draw.lot_id).update(returned=F("returned") - amount)
+        writer.touch(draw.lot)
+        return
+    shipped = amount if draw.role == DrawRole.SHIPPED else 0
+    Lot.objects.filter(pk=draw.lot_id).update(
+        shipped=F("shipped") - shipped,
+        drawn=F("drawn") - amount,
+        solids_drawn=F("solids_drawn") - solids,
+    )
+    if draw.from_place is not None:
+        change_stock(draw.lot, draw.from_place, amount)
+    writer.touch(draw.lot)

@@ -9,7 +9,7 @@ from datetime import datetime
 from lots.models import Draw, DrawRole, Lot, Place, Step, StepKind
 from lots.tracing.cone import reaches
 
-from . import _ledger
+from . import _ledger, _vessels
 from ._door import Writer
 
 WASHED = ("washed", "washed and verified")
@@ -29,7 +29,7 @@ def _washed_between(place: Place, after: datetime, before: datetime) -> bool:
 def of_vessel(writer: Writer, step: Step, vessel: Place) -> None:
     """Draw what an empty vessel last held, unless it was washed since."""
     writer.own(vessel)
-    if _ledger.contents(vessel):
+    if _vessels.contents(vessel):
         return
     last = (
         Draw.objects.filter(from_place=vessel, ended_at=None, step__started_at__lte=step.started_at)

@@ -2,11 +2,12 @@
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from datetime import datetime
 
 from lots.models import DrawRole, Lot, Place, Step
 from lots.quantities import rounding
 
-from . import _ledger
+from . import _ledger, _redivide
 from ._door import Writer
 from .errors import RecordingError
 from .measures import NOT_MEASURED, Typed, liquid_mass
@@ -35,16 +36,6 @@ class FromLot:
 Source = FromVessel | FromLot
 
 
-def mixture_brix(vessel: Place) -> float | None:
-    """Return the true °Brix of a vessel's contents, or ``None`` where a share is unknown."""
-    rows = _ledger.contents(vessel)
-    mass = sum(row.quantity for row in rows)
-    if not mass or any(row.lot.solids_remaining is None for row in rows):
-        return None
-    solids = sum(int(row.lot.solids_remaining) for row in rows)
-    return 100 * solids / mass
-
-
 def pieces_or_milligrams(lot: Lot, amount: Typed, *, may_be_none: bool = False) -> int | None:
     """Return ledger units of an amount typed for a lot; all that remains where nothing was typed.
 
@@ -65,18 +56,23 @@ def pieces_or_milligrams(lot: Lot, amount: Typed, *, may_be_none: bool = False) 
     return liquid_mass(amount, brix)
 
 
-def draw(writer: Writer, step: Step, sources: Sequence[Source]) -> _ledger.Taken:
-    """Draw every source; returns the mass and solids of the ingredients (aids left out)."""
+def draw(
+    writer: Writer, step: Step, sources: Sequence[Source], at: datetime | None = None
+) -> _ledger.Taken:
+    """Draw every source; returns the mass and solids of the ingredients (aids left out).
+
+    ``at`` is the time of the act inside a running step; else the step's own.
+    """
     mass: int | None = 0
     solids: int | None = 0
     for source in sources:
         if isinstance(source, FromVessel):
-            asked = liquid_mass(source.amount, mixture_brix(source.vessel))
-            taken = _ledger.take_from_vessel(
+            taken = _redivide.take(
                 writer,
                 step,
                 source.vessel,
-                asked,
+                source.amount,
+                at=at or step.ended_at or step.started_at,
                 emptied=source.emptied,
                 accept_difference=source.accept_difference,
             )

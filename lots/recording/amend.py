@@ -1,8 +1,9 @@
 """Corrections of recorded facts: the old value stays, with who, when and why."""
 
-from lots.models import Amendment, Step
+from lots.models import Amendment, Step, VesselTake
 from lots.rules.roles import Action
 
+from . import _redivide, _vessels
 from .context import Context
 from .errors import RecordingError
 
@@ -39,3 +40,31 @@ def amend_step(context: Context, *, step: Step, field: str, new: str, reason: st
                 by=writer.by,
             )
         )
+
+
+def waiting_for_division(step: Step) -> list[VesselTake]:
+    """Return the later takes that a late record's lots are only carried over into."""
+    found: list[VesselTake] = []
+    for lot in step.made_lots.select_related("put_in"):
+        carried = lot.draws.filter(ended_at=None, role="carry-over", quantity=0, asked=None)
+        steps = set(carried.values_list("step", flat=True))
+        if lot.put_in is not None and steps:
+            later = _vessels.later_takes(lot.put_in, lot.made_at)
+            found += [take for take in later if take.step_id in steps]
+    return found
+
+
+def divide_anew(context: Context, *, step: Step) -> list[VesselTake]:
+    """Divide the later draws of the vessels that a late record put something into anew."""
+    with context.open("re-division", Action.RECORD) as writer:
+        writer.own(step)
+        takes = waiting_for_division(step)
+        if not takes:
+            raise RecordingError("No later record waits to be divided anew.")
+        writer.redividing = True
+        for lot in step.made_lots.select_related("put_in"):
+            if lot.put_in is not None and lot.put_in.is_vessel:
+                _redivide.rewind(writer, lot.put_in, lot.made_at)
+        writer.label = f"Re-division after {step}"
+        writer.answer = step
+        return takes

@@ -5,7 +5,7 @@ for each receiving vessel; a draw-off is an event that raises what that lot has 
 """
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from datetime import datetime
 
 from django.db.models import F
@@ -25,7 +25,7 @@ from lots.models import (
 )
 from lots.rules.verdict import Stage
 
-from . import _judge, _ledger, _residue, _sources
+from . import _judge, _ledger, _residue, _sources, _vessels
 from ._door import Writer
 from .context import Context
 from .errors import NotEnough, RecordingError
@@ -82,7 +82,7 @@ def open_boil(
                     )
                 ],
             )
-        held = _ledger.contents(evaporator)
+        held = _vessels.contents(evaporator, at)
         _residue.of_vessel(writer, step, evaporator)
         for row in held:
             quantity = None if row.lot.made is None else row.quantity
@@ -97,7 +97,7 @@ def feed_boil(
     """Feed sap or concentrate into a running boil, or add defoamer."""
     with context.open("boil feed") as writer:
         boil = _running(writer, boil)
-        taken = _sources.draw(writer, boil, sources)
+        taken = _sources.draw(writer, boil, sources, at)
         _event(writer, boil, "feed", at, {"milligrams": taken.quantity or 0})
         return boil
 
@@ -177,7 +177,7 @@ def record_boil(
             since_last_run=since_last_run,
             people=people,
         )
-        rest = Context(context.facility, context.by, context.now)
+        rest = replace(context, client=None)
         feed_boil(rest, boil=boil, at=at, sources=sources)
         for draw in draw_offs:
             draw_off(rest, boil=boil, item=syrup, draw=draw)

@@ -4,12 +4,14 @@ from collections.abc import Iterator
 from contextlib import contextmanager
 from dataclasses import dataclass
 from datetime import datetime
+from functools import partial
 from typing import Any
 from uuid import UUID
 
 from lots.models import Facility, User
 from lots.rules.roles import Action
 
+from . import _redivide
 from ._door import Writer, door
 
 
@@ -25,6 +27,8 @@ class Context:
     now: datetime | None = None
     client: tuple[UUID, Any] | None = None
     reason: str = ""
+    # Confirmed: a late act may divide later draws anew, in its own transaction.
+    redivide: bool = False
 
     @contextmanager
     def open(self, name: str, action: Action = Action.RECORD) -> Iterator[Writer]:
@@ -38,4 +42,9 @@ class Context:
             now=self.now,
             client=self.client,
         ) as writer:
+            if self.redivide:
+                writer.redividing = True
+                writer.before_arrival = partial(_redivide.rewind, writer)
             yield writer
+            if writer.rewound:
+                _redivide.forward(writer)

@@ -3,14 +3,11 @@
 import hashlib
 from datetime import datetime, timedelta
 
-from django.db.models import F
 from django.utils import timezone
 
 from lots.models import (
-    Adjustment,
     CorrectiveAction,
     Draw,
-    DrawRole,
     Hold,
     ItemKind,
     Lot,
@@ -181,10 +178,9 @@ def void_step(context: Context, *, step: Step, reason: str) -> Step:
             raise RecordingError("This record is void already.")
         _refuse_needed(step)
         for draw in step.draws.filter(ended_at=None).select_related("lot__made_by", "from_place"):
-            _give_back(writer, draw)
+            _ledger.give_back(writer, draw)
         for booked in step.adjustments.filter(ended_at=None).select_related("lot", "place"):
-            Adjustment.objects.filter(pk=booked.pk).update(ended_at=writer.now, ended_by=writer.by)
-            _ledger.book_adjustment(writer, booked, back=True)
+            _ledger.take_back_adjustment(writer, booked)
         if step.kind == StepKind.MOVE:
             _move_back(writer, step)
         for lot in step.made_lots.all():
@@ -218,25 +214,6 @@ def _move_back(writer: Writer, step: Step) -> None:
     _ledger.change_stock(lot, step.place, -step.detail["quantity"])
     _ledger.change_stock(lot, come_from, step.detail["quantity"])
     writer.touch(lot)
-
-
-def _give_back(writer: Writer, draw: Draw) -> None:
-    Draw.objects.filter(pk=draw.pk).update(ended_at=writer.now, ended_by=writer.by)
-    writer.touch(draw)
-    amount, solids = draw.quantity or 0, draw.solids or 0
-    if draw.role == DrawRole.RETURNED:
-        Lot.objects.filter(pk=draw.lot_id).update(returned=F("returned") - amount)
-        writer.touch(draw.lot)
-        return
-    shipped = amount if draw.role == DrawRole.SHIPPED else 0
-    Lot.objects.filter(pk=draw.lot_id).update(
-        shipped=F("shipped") - shipped,
-        drawn=F("drawn") - amount,
-        solids_drawn=F("solids_drawn") - solids,
-    )
-    if draw.from_place is not None:
-        _ledger.change_stock(draw.lot, draw.from_place, amount)
-    writer.touch(draw.lot)
 
 
 def keep_unposted(

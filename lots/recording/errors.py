@@ -30,6 +30,10 @@ class WrongTime(RecordingError):
     """The stated time cannot stand: in the future, or an end before its start."""
 
 
+class WouldRedivide(RecordingError):
+    """A late act on a vessel that later records drew from: to be confirmed."""
+
+
 class OtherFacility(RecordingError):
     """A row that belongs to another facility."""
 

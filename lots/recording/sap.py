@@ -128,6 +128,7 @@ def _concentrate(
         solids=solids if solids is not None else taken.solids,
         at=step.ended_at,
         estimated=estimated,
+        derived=estimated,
         typed_value=amount.text,
         typed_unit=amount.unit,
     )

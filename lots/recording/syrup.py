@@ -63,6 +63,7 @@ def record_mixture(
             quantity=taken.quantity if mass is None else mass,
             solids=taken.solids if mass is None else measured.solids(),
             goods_kind=_goods_kind(step),
+            derived=mass is None and taken.quantity is not None,
             typed_value=amount.text,
             typed_unit=amount.unit,
         )
