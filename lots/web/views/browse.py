@@ -61,7 +61,7 @@ def lots(request: HttpRequest, slug: str) -> HttpResponse:
     if state:
         rows = rows.filter(state=state)
     rows = rows.select_related("item", "printed_code", "facility")
-    table = LotTable(rows)
+    table = LotTable(facility, rows)
     RequestConfig(request, paginate={"per_page": 25}).configure(table)
     context = {"table": table, "title": "Lots", "q": words, "state": state}
     return render(request, "lots/lots.html", context)
@@ -170,7 +170,8 @@ def rules(request: HttpRequest, slug: str) -> HttpResponse:
 @allow(Action.VIEW)
 def journal(request: HttpRequest, slug: str) -> HttpResponse:
     """List the journal's entries."""
-    rows = JournalEntry.objects.filter(chain=facility_of(request).chain).order_by("-seq")
-    table = JournalTable(rows)
+    facility = facility_of(request)
+    rows = JournalEntry.objects.filter(chain=facility.chain).order_by("-seq")
+    table = JournalTable(facility, rows)
     RequestConfig(request, paginate={"per_page": 50}).configure(table)
     return render(request, "lots/journal.html", {"table": table, "title": "Journal"})
