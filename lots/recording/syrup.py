@@ -52,27 +52,40 @@ def record_mixture(
         _residue.of_vessel(writer, step, into)
         if machine is not None:
             _residue.of_machine(writer, step, machine)
-        true = brix.true_brix() if brix else _sources.brix_of(taken)
-        measured = Liquid(amount, true)
-        mass = measured.milligrams()
-        lot = _ledger.make(
-            writer,
-            step,
-            item,
-            place=into,
-            quantity=taken.quantity if mass is None else mass,
-            solids=taken.solids if mass is None else measured.solids(),
-            goods_kind=_goods_kind(step),
-            derived=mass is None and taken.quantity is not None,
-            typed_value=amount.text,
-            typed_unit=amount.unit,
-        )
+        lot = _make_mixture(writer, step, item, into, taken, amount, brix)
         _judge.note(writer, step, lot, seen)
-        if brix is not None:
-            reading = _judge.note_density(writer, step, lot, brix)
-            _judge.judge(writer, lot, Stage.IN_PROCESS, [reading])
         _judge.judge_loss(writer, step)
         return step
+
+
+def _make_mixture(
+    writer: Writer,
+    step: Step,
+    item: Item,
+    into: Place,
+    taken: _ledger.Taken,
+    amount: Typed,
+    brix: DensityReading | None,
+) -> Lot:
+    """Make the mixture's lot: as measured, or what was drawn."""
+    measured = Liquid(amount, brix.true_brix() if brix else _sources.brix_of(taken))
+    mass = measured.milligrams()
+    lot = _ledger.make(
+        writer,
+        step,
+        item,
+        place=into,
+        quantity=taken.quantity if mass is None else mass,
+        solids=taken.solids if mass is None else measured.solids(),
+        goods_kind=_goods_kind(step),
+        derived=mass is None and taken.quantity is not None,
+        typed_value=amount.text,
+        typed_unit=amount.unit,
+    )
+    if brix is not None:
+        reading = _judge.note_density(writer, step, lot, brix)
+        _judge.judge(writer, lot, Stage.IN_PROCESS, [reading])
+    return lot
 
 
 def _goods_kind(step: Step) -> GoodsKind:

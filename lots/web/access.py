@@ -64,8 +64,13 @@ def facility_of(request: HttpRequest) -> Facility:
 
 
 def context_of(request: HttpRequest, client: tuple[UUID, Any] | None = None) -> Context:
-    """Return who records and where, for a recorder."""
-    return Context(facility_of(request), request.user, client=client)  # type: ignore[arg-type]
+    """Return who records and where, and whether later draws may be divided anew."""
+    return Context(
+        facility_of(request),
+        request.user,  # type: ignore[arg-type]
+        client=client,
+        redivide="redivide" in request.POST,
+    )
 
 
 def get_lot(request: HttpRequest, uuid: UUID) -> Lot:

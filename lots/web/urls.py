@@ -21,6 +21,7 @@ urlpatterns = [
     path("f/<slug:slug>/record/<slug:kind>/", record.record, name="record"),
     path("f/<slug:slug>/steps/<uuid:uuid>/", record.step, name="step"),
     path("f/<slug:slug>/steps/<uuid:uuid>/void/", decide.void, name="void"),
+    path("f/<slug:slug>/steps/<uuid:uuid>/divide/", decide.divide, name="divide"),
     path("f/<slug:slug>/steps/<uuid:uuid>/amend/", decide.amend, name="amend"),
     path("f/<slug:slug>/steps/<uuid:uuid>/<slug:act>/", record.running, name="running"),
     path("f/<slug:slug>/unposted/<uuid:uuid>/", decide.settle, name="settle"),

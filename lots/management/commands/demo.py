@@ -5,7 +5,7 @@ from typing import Any
 
 from django.conf import settings
 from django.core.management import call_command
-from django.core.management.base import BaseCommand, CommandParser
+from django.core.management.base import BaseCommand, CommandError, CommandParser
 from django.db import connection, transaction
 from django.utils import timezone
 
@@ -29,6 +29,11 @@ class Command(BaseCommand):
         if options["reset"]:
             self._reset()
         call_command("migrate", verbosity=0)
+        if Facility.objects.filter(fictional=False).exists():
+            raise CommandError(
+                "This data folder or database holds a real book; the demo keeps out of it. "
+                "Unset DATABASE_URL and SUGARHOUSE_DATA to give the demo its own."
+            )
         if not Facility.objects.filter(slug="birch-hollow").exists():
             self.stdout.write("Recording the demo season (fictional data) …")
             with transaction.atomic():

@@ -10,7 +10,7 @@ from django.utils import timezone
 
 from lots.models import Facility, Step
 from lots.recording.context import Context
-from lots.recording.errors import RecordingError
+from lots.recording.errors import RecordingError, WouldRedivide
 
 
 class LocalDateTimeInput(forms.DateTimeInput):
@@ -30,6 +30,7 @@ class RecordForm(forms.Form):
     caution = ""
     folded: tuple[str, ...] = ()
     refused = False
+    would_redivide = False
     client_id = forms.UUIDField(widget=forms.HiddenInput)
     at = forms.DateTimeField(
         label="When",
@@ -81,7 +82,11 @@ class RecordForm(forms.Form):
 
     def client(self) -> tuple[UUID, Any]:
         """Return the form's own id and its content, by which a repeat is told."""
-        content = {key: self.data.getlist(key) for key in sorted(self.data) if key[0] != "c"}
+        content = {
+            key: self.data.getlist(key)
+            for key in sorted(self.data)
+            if key[0] != "c" and key != "redivide"
+        }
         return self.cleaned_data["client_id"], content
 
     def record(self, context: Context) -> Step:
@@ -91,4 +96,5 @@ class RecordForm(forms.Form):
     def refuse(self, error: RecordingError) -> None:
         """Put a refusal beside its field, keeping all that was typed."""
         self.refused = True
+        self.would_redivide = isinstance(error, WouldRedivide)
         self.add_error(error.field if error.field in self.fields else None, error.message)

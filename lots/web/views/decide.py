@@ -117,6 +117,20 @@ def amend(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
 
 @allow(Action.RECORD)
 @require_POST
+def divide(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
+    """Divide later draws anew after a late record."""
+    step = get_step(request, uuid)
+    try:
+        takes = corrections.divide_anew(context_of(request), step=step)
+    except RecordingError as error:
+        messages.error(request, error.message)
+    else:
+        messages.success(request, f"Divided anew: {len(takes)} later draw(s).")
+    return redirect("step", slug, step.uuid)
+
+
+@allow(Action.RECORD)
+@require_POST
 def void(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     """Void a record: a lead's act, or a recorder's own within two minutes."""
     step = get_step(request, uuid)

@@ -10,7 +10,7 @@ from django.utils import timezone
 from lots.models import Lot, PrintedCode, Step
 from lots.recording import decisions
 from lots.recording._door import AlreadyRecorded
-from lots.recording.amend import FIELDS
+from lots.recording.amend import FIELDS, waiting_for_division
 from lots.recording.errors import RecordingError
 from lots.rules.roles import Action
 
@@ -120,6 +120,7 @@ def step(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
         "fields": FIELDS,
         "may_undo": found.recorded_by == request.user
         and timezone.now() - found.recorded_at <= decisions.UNDO_WINDOW,
+        "waiting": waiting_for_division(found) if found.late else [],
         "acts": _acts(found),
         "reserved": _reserved(found),
     }
