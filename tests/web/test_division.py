@@ -55,3 +55,16 @@ def test_late_sap_is_divided_from_its_page(client, house):
 
     assert late.made_lots.get().remaining == 0
     assert "Later draws" not in client.get(url(house, "step", late.uuid)).content.decode()
+
+
+def test_the_same_form_id_with_another_condition_is_a_conflict(client, house):
+    client.force_login(house.recorder)
+    form = {
+        "client_id": uuid4(), "at": "2026-04-02T12:30", "supplier": house.supplier.pk,
+        "item": house.items["aid"].pk, "amount_0": "5", "amount_1": "lb",
+        "place": house.places["Store"].pk, "decision": "accept", "condition": "dry",
+    }  # fmt: skip
+    assert client.post(url(house, "record", "receiving"), form).status_code == 302
+    changed = client.post(url(house, "record", "receiving"), {**form, "condition": "wet"})
+    assert changed.status_code == 422
+    assert "recorded before with other content" in changed.content.decode()

@@ -13,6 +13,10 @@ from lots.recording.context import Context
 from lots.recording.errors import RecordingError, WouldRedivide
 
 
+# What a form sends that is no part of what it says.
+NOT_CONTENT = frozenset({"csrfmiddlewaretoken", "client_id", "redivide", "happened"})
+
+
 class LocalDateTimeInput(forms.DateTimeInput):
     """A date and time in the facility's zone."""
 
@@ -83,9 +87,7 @@ class RecordForm(forms.Form):
     def client(self) -> tuple[UUID, Any]:
         """Return the form's own id and its content, by which a repeat is told."""
         content = {
-            key: self.data.getlist(key)
-            for key in sorted(self.data)
-            if key[0] != "c" and key != "redivide"
+            key: self.data.getlist(key) for key in sorted(self.data) if key not in NOT_CONTENT
         }
         return self.cleaned_data["client_id"], content
 
