@@ -12,7 +12,6 @@ from lots.models import Facility, Step
 from lots.recording.context import Context
 from lots.recording.errors import RecordingError, WouldRedivide
 
-
 # What a form sends that is no part of what it says.
 NOT_CONTENT = frozenset({"csrfmiddlewaretoken", "client_id", "redivide", "happened"})
 
