@@ -1,11 +1,14 @@
 """Corrections of recorded facts: the old value stays, with who, when and why."""
 
-from lots.models import Amendment, Step, VesselTake
+from dataclasses import replace
+
+from lots.models import Amendment, Lot, LotState, ReadingKind, Step, VesselTake
 from lots.rules.roles import Action
 
-from . import _redivide, _vessels
+from . import _ledger, _redivide, _vessels
 from .context import Context
-from .errors import RecordingError
+from .errors import NotEnough, RecordingError
+from .measures import Liquid, Typed
 
 # Facts that change no quantity. A wrong quantity is voided and recorded anew.
 FIELDS = ("note", "document", "people")
@@ -40,6 +43,65 @@ def amend_step(context: Context, *, step: Step, field: str, new: str, reason: st
                 by=writer.by,
             )
         )
+
+
+def amend_amount(context: Context, *, lot: Lot, amount: Typed, reason: str) -> Amendment:
+    """Correct how much a record made; what drew on it by its vessel is divided anew.
+
+    The density stays as it was read. Raises NotEnough where more was drawn than there then is.
+    """
+    if amount.value is None or amount.value < 0:
+        raise RecordingError("Enter the right amount.", field="new")
+    if not reason.strip():
+        raise RecordingError("Say why it is corrected.", field="reason")
+    with replace(context, redivide=True).open("correction", Action.AMEND) as writer:
+        lot = Lot.objects.select_related("item", "put_in", "made_by").get(pk=lot.pk)
+        writer.own(lot)
+        _refuse_amount(lot)
+        if lot.item.is_liquid and lot.put_in is not None:
+            writer.before_arrival(lot.put_in, lot.made_at)
+        lot.refresh_from_db()
+        made, solids = _corrected(lot, amount)
+        if made + lot.adjusted < lot.drawn:
+            raise NotEnough(f"More than that was drawn from {lot.code} already.", field="new")
+        _ledger.change_stock(lot, lot.put_in, made - int(lot.made or 0))
+        Lot.objects.filter(pk=lot.pk).update(
+            made=made, solids_made=solids, typed_value=amount.text, typed_unit=amount.unit
+        )
+        writer.label, writer.reason = f"Correction of {lot.code}", reason
+        writer.touch(lot)
+        return writer.touch(
+            Amendment.objects.create(
+                step=lot.made_by,
+                field=f"amount of {lot.code}",
+                old=f"{lot.typed_value} {lot.typed_unit}".strip(),
+                new=f"{amount.text} {amount.unit}",
+                reason=reason[:400],
+                at=writer.now,
+                by=writer.by,
+            )
+        )
+
+
+def _refuse_amount(lot: Lot) -> None:
+    if lot.derived:
+        raise RecordingError("This amount follows from what was drawn; correct that instead.")
+    if lot.state == LotState.VOID or lot.made is None or lot.put_in is None:
+        raise RecordingError("Void the record and enter it anew to change this.", field="new")
+
+
+def _corrected(lot: Lot, amount: Typed) -> tuple[int, int | None]:
+    """Return (made, solids) of a corrected amount at the density the lot was made with."""
+    if lot.item.unit == "piece":
+        if amount.value is None or amount.value != int(amount.value):
+            raise RecordingError("Count whole pieces.", field="new")
+        return int(amount.value), None
+    reading = lot.readings.filter(kind=ReadingKind.BRIX).order_by("at", "pk").first()
+    brix = float(reading.corrected) if reading else None
+    if brix is None and lot.made and lot.solids_made is not None:
+        brix = 100 * int(lot.solids_made) / int(lot.made)
+    liquid = Liquid(amount, brix)
+    return liquid.milligrams() or 0, liquid.solids() if lot.item.is_liquid else None
 
 
 def waiting_for_division(step: Step) -> list[VesselTake]:

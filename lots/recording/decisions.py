@@ -91,8 +91,19 @@ def complete_action(
         return writer.touch(action)
 
 
-def decide_hold(context: Context, *, hold: Hold, decision: str, reason: str, shown: str) -> Lot:
-    """End a hold by a signed decision: release or reject; ``shown`` is the hash of the screen."""
+def decide_hold(
+    context: Context,
+    *,
+    hold: Hold,
+    decision: str,
+    reason: str,
+    shown: str,
+    official_release: str = "",
+) -> Lot:
+    """End a hold by a signed decision: release or reject; ``shown`` is the hash of the screen.
+
+    An official detention ends only with the reference of the authority's own release.
+    """
     if decision not in ("release", "reject"):
         raise RecordingError("Choose release or reject.", field="decision")
     if not reason.strip():
@@ -102,7 +113,9 @@ def decide_hold(context: Context, *, hold: Hold, decision: str, reason: str, sho
         writer.own(hold.lot)
         if decision == "release":
             _refuse_running(hold.lot)
-        _refuse_decision(hold, decision, shown)
+        _refuse_decision(hold, decision, shown, official_release)
+        if official_release:
+            reason = f"Official release {official_release}. {reason}"
         writer.label = f"{decision.capitalize()} {hold.lot.code}"
         Hold.objects.filter(pk=hold.pk).update(
             ended_at=writer.now,
@@ -121,11 +134,13 @@ def decide_hold(context: Context, *, hold: Hold, decision: str, reason: str, sho
         return writer.touch(Lot.objects.get(pk=lot.pk))
 
 
-def _refuse_decision(hold: Hold, decision: str, shown: str) -> None:
+def _refuse_decision(hold: Hold, decision: str, shown: str, official_release: str) -> None:
     if hold.ended_at is not None:
         raise RecordingError("This hold was decided already.")
-    if hold.official and decision == "release":
-        raise RecordingError("An official detention ends only by a recorded official release.")
+    if hold.official and decision == "release" and not official_release.strip():
+        raise RecordingError(
+            "An official detention ends only by a recorded official release: enter its reference."
+        )
     if shown != shown_hash(hold.lot):
         raise RecordingError("The record changed since this page was shown; read it again.")
     if decision == "release" and hold.actions.filter(completed_at=None).exists():

@@ -15,6 +15,7 @@ urlpatterns = [
     path("f/<slug:slug>/lots/", browse.lots, name="lots"),
     path("f/<slug:slug>/lots/<uuid:uuid>/", browse.lot, name="lot"),
     path("f/<slug:slug>/lots/<uuid:uuid>/hold/", decide.hold, name="hold"),
+    path("f/<slug:slug>/lots/<uuid:uuid>/amount/", decide.correct_amount, name="amount"),
     path("f/<slug:slug>/lots/<uuid:uuid>/release/", decide.release, name="release"),
     path("f/<slug:slug>/lots/<uuid:uuid>/packet.<slug:form>", packet.lot_packet, name="packet"),
     path("f/<slug:slug>/holds/<uuid:uuid>/", decide.decide, name="decide"),

@@ -4,10 +4,13 @@ import json
 
 import pytest
 
-from lots.models import JournalEntry
-from lots.recording import amend, decisions
+from lots.models import JournalEntry, Lot
+from lots.recording import amend, decisions, goods_out
+from lots.recording._sources import FromLot
 from lots.recording.context import Context
 from lots.recording.errors import NotAllowed, RecordingError
+from lots.tracing import verify
+from tests.factories import gallons, pieces
 
 pytestmark = [pytest.mark.django_db, pytest.mark.engine]
 
@@ -47,3 +50,58 @@ def test_a_recorder_undoes_an_own_record_within_two_minutes_only(house):
 
     first.refresh_from_db()
     assert first.voided_at is not None
+
+
+def test_a_corrected_amount_divides_what_drew_on_it_anew(house):
+    first = house.collect("100")
+    second = house.collect("100", hours=1)
+    boiled = house.boil(hours=6)
+
+    amend.amend_amount(
+        house.context(house.lead, 8), lot=first, amount=gallons("60"), reason="misread the dipstick"
+    )
+
+    first.refresh_from_db()
+    assert (first.typed_value, first.remaining) == ("60", 0)
+    live = boiled.draws.filter(ended_at=None, lot__in=[first, second])
+    assert {draw.lot_id: draw.quantity for draw in live} == {
+        first.pk: first.made,
+        second.pk: second.made,
+    }
+    assert first.made_by.amendments.get().old == "100 US gal"
+    assert list(verify.ledger_faults()) == []
+    assert list(verify.image_faults()) == []
+
+
+def test_a_count_of_jars_is_not_corrected_below_what_was_sold(house):
+    jars = house.jars()
+    goods_out.record_sale(house.context(hours=7), at=house.at(7), sold=[FromLot(jars, pieces(12))])
+    with pytest.raises(RecordingError, match="More than that was drawn"):
+        amend.amend_amount(
+            house.context(house.lead, 8), lot=jars, amount=pieces(10), reason="miscounted"
+        )
+    amend.amend_amount(
+        house.context(house.lead, 8), lot=jars, amount=pieces(19), reason="miscounted"
+    )
+    jars.refresh_from_db()
+    assert jars.remaining == 7
+
+
+def test_an_official_detention_ends_only_with_the_authoritys_reference(house):
+    jars = house.jars()
+    (hold,) = decisions.place_hold(
+        house.context(house.lead, 8), lot=jars, reason="detained", official=True
+    )
+    lead = house.context(house.lead, 9)
+    decisions.complete_action(
+        lead, action=hold.actions.get(), cause="a", correction="b", prevention="c", evaluation="d"
+    )
+    shown = decisions.shown_hash(Lot.objects.get(pk=jars.pk))
+    said = {"hold": hold, "decision": "release", "reason": "released", "shown": shown}
+    with pytest.raises(RecordingError, match="its reference"):
+        decisions.decide_hold(lead, **said)
+
+    lot = decisions.decide_hold(lead, **said, official_release="VT-2026-17")
+
+    assert lot.state == "released"
+    assert "VT-2026-17" in lot.holds.get().decision_reason

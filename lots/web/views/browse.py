@@ -98,6 +98,7 @@ def lot(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
         "stock": [(name, amount_words(found, n)) for name, n in told.accounting.in_stock.items()],
         "remaining": amount_words(found, found.remaining),
         "shown": decisions.shown_hash(found),
+        "descendants": decisions.descendants_in_stock(found),
     }
     return render(request, "lots/lot.html", context)
 

@@ -1,5 +1,6 @@
 """Deciding: holds, releases, voids, and the people of a facility."""
 
+from decimal import Decimal, InvalidOperation
 from uuid import UUID
 
 from django.contrib import messages
@@ -8,9 +9,11 @@ from django.shortcuts import get_object_or_404, redirect, render
 from django.views.decorators.http import require_POST
 
 from lots.models import Hold, Membership, UnpostedEntry
+from lots.quantities.units import UnitError
 from lots.recording import amend as corrections
 from lots.recording import decisions, setup
 from lots.recording.errors import RecordingError
+from lots.recording.measures import Typed
 from lots.rules.roles import Action, Role
 
 from ..access import allow, context_of, facility_of, get_lot, get_step
@@ -26,7 +29,13 @@ def hold(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     """Hold a lot and what was made from it."""
     lot = get_lot(request, uuid)
     try:
-        held = decisions.place_hold(context_of(request), lot=lot, reason=_said(request, "reason"))
+        held = decisions.place_hold(
+            context_of(request),
+            lot=lot,
+            reason=_said(request, "reason"),
+            descendants="descendants" in request.POST,
+            official="official" in request.POST,
+        )
     except RecordingError as error:
         messages.error(request, error.message)
     else:
@@ -56,6 +65,7 @@ def decide(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
             decision=_said(request, "decision"),
             reason=_said(request, "reason"),
             shown=_said(request, "shown"),
+            official_release=_said(request, "official_release"),
         )
     except RecordingError as error:
         messages.error(request, error.message)
@@ -113,6 +123,25 @@ def amend(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     else:
         messages.success(request, "Corrected; the old value stays beside the new one.")
     return redirect("step", slug, step.uuid)
+
+
+@allow(Action.AMEND)
+@require_POST
+def correct_amount(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
+    """Correct how much a lot's record made."""
+    lot = get_lot(request, uuid)
+    try:
+        amount = Typed(Decimal(_said(request, "amount")), _said(request, "unit"))
+        corrections.amend_amount(
+            context_of(request), lot=lot, amount=amount, reason=_said(request, "reason")
+        )
+    except InvalidOperation:
+        messages.error(request, "Enter a number, such as 42.5.")
+    except (RecordingError, UnitError) as error:
+        messages.error(request, str(error))
+    else:
+        messages.success(request, "Corrected; the old amount stays beside the new one.")
+    return redirect("lot", slug, lot.uuid)
 
 
 @allow(Action.RECORD)
