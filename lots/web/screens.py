@@ -2,13 +2,13 @@
 
 from lots.models import StepKind
 
-from .forms import container_fill, handling, sap, syrup
+from .forms import boil, container_fill, handling, sap, syrup, whole_boil
 from .forms.base import RecordForm
 
 SCREENS: dict[str, type[RecordForm]] = {
     StepKind.COLLECTION.value: sap.CollectionForm,
     StepKind.CONCENTRATION.value: sap.ConcentrationForm,
-    StepKind.BOIL.value: sap.BoilForm,
+    StepKind.BOIL.value: boil.BoilForm,
     StepKind.FILTRATION.value: syrup.FiltrationForm,
     StepKind.DRUM_FILL.value: syrup.DrumFillForm,
     StepKind.CONTAINER_FILL.value: container_fill.ContainerFillForm,
@@ -28,13 +28,19 @@ SCREENS: dict[str, type[RecordForm]] = {
     StepKind.SUPPLIER_RETURN.value: handling.SupplierReturnForm,
     StepKind.OPENING_STOCK.value: handling.OpeningStockForm,
 }
-# Screens that open a step and leave it running; what is done inside it is below.
-OPENERS: dict[str, type[RecordForm]] = {"open-fill": container_fill.OpenFillForm}
+# A second screen of a kind: a step that runs, opened or recorded whole; what is done inside a
+# running one is below.
+OTHERS: dict[str, type[RecordForm]] = {
+    "whole-boil": whole_boil.WholeBoilForm,
+    "open-fill": container_fill.OpenFillForm,
+}
+FORMS = {**SCREENS, **OTHERS}
 RUNNING: dict[str, dict[str, type[RecordForm]]] = {
     StepKind.BOIL.value: {
-        "feed": sap.FeedForm,
-        "draw-off": sap.DrawOffForm,
-        "close": sap.CloseBoilForm,
+        "feed": boil.FeedForm,
+        "draw-off": boil.DrawOffForm,
+        "put-back": boil.PutBackForm,
+        "close": boil.CloseBoilForm,
     },
     StepKind.CONTAINER_FILL.value: {"finish": container_fill.FinishFillForm},
 }

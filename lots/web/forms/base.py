@@ -1,5 +1,6 @@
 """The base of every record form: its own id, its time, and refusals beside their fields."""
 
+import re
 from datetime import datetime
 from typing import Any
 from uuid import UUID, uuid4
@@ -8,12 +9,14 @@ from zoneinfo import ZoneInfo
 from django import forms
 from django.utils import timezone
 
-from lots.models import Facility, Step
+from lots.models import Draw, Facility, Item, Lot, Step, Unit
 from lots.recording.context import Context
 from lots.recording.errors import RecordingError, WouldRedivide
 
+Group = tuple[str, list[str], bool]
 # What a form sends that is no part of what it says.
 NOT_CONTENT = frozenset({"csrfmiddlewaretoken", "client_id", "redivide", "happened"})
+AMOUNT_WORDS = ("amount", "quantity", "counted")
 
 
 class LocalDateTimeInput(forms.DateTimeInput):
@@ -25,25 +28,48 @@ class LocalDateTimeInput(forms.DateTimeInput):
         super().__init__(format="%Y-%m-%dT%H:%M")
 
 
+class LocalDateTimeField(forms.DateTimeField):
+    """A date and time as the facility's clock shows it, without a zone."""
+
+    def __init__(self, **kwargs: Any) -> None:
+        super().__init__(
+            widget=LocalDateTimeInput(),
+            input_formats=["%Y-%m-%dT%H:%M", "%Y-%m-%d %H:%M"],
+            error_messages={"invalid": "Enter a date and time, such as 2026-04-02 14:30."},
+            **kwargs,
+        )
+
+    def to_python(self, value: Any) -> datetime | None:
+        """Return the time as typed."""
+        moment: datetime | None = super().to_python(value)
+        return None if moment is None else moment.replace(tzinfo=None)
+
+
 class RecordForm(forms.Form):
-    """A record form of one facility; ``record`` calls the one recorder it stands for."""
+    """A record form of one facility; ``record`` calls the one recorder it stands for.
+
+    ``folded`` names what stands under "More"; ``groups`` are (legend, names, folded) parts of a
+    long form; ``rows`` pairs a choice of lot, item or vessel with its amount; ``instead`` is
+    (kind, words) of another form for the same work.
+    """
 
     title = ""
     verb = "Record"
     caution = ""
     folded: tuple[str, ...] = ()
+    groups: tuple[tuple[str, tuple[str, ...], bool], ...] = ()
+    rows: tuple[tuple[str, str], ...] = ()
+    instead: tuple[str, str] | None = None
     refused = False
     would_redivide = False
     client_id = forms.UUIDField(widget=forms.HiddenInput)
-    at = forms.DateTimeField(
-        label="When",
-        widget=LocalDateTimeInput(),
-        input_formats=["%Y-%m-%dT%H:%M", "%Y-%m-%d %H:%M"],
-        error_messages={"invalid": "Enter a date and time, such as 2026-04-02 14:30."},
-    )
+    at = LocalDateTimeField(label="When")
 
-    def __init__(self, facility: Facility, *args: Any, **kwargs: Any) -> None:
+    def __init__(
+        self, facility: Facility, *args: Any, step: Step | None = None, **kwargs: Any
+    ) -> None:
         self.facility = facility
+        self.step = step
         now = timezone.now().astimezone(ZoneInfo(facility.zone)).replace(tzinfo=None)
         initial = {"client_id": uuid4(), "at": now.replace(second=0, microsecond=0)}
         kwargs["initial"] = {**initial, **(kwargs.get("initial") or {})}
@@ -54,34 +80,54 @@ class RecordForm(forms.Form):
         """Add the fields whose choices depend on the facility."""
 
     @property
-    def fieldsets(self) -> list[tuple[str, list[str], bool]]:
+    def fieldsets(self) -> list[Group]:
         """Return the groups a page shows: the numbers first, the rest folded under "More"."""
-        shown = [name for name in self.fields if name not in self.folded and name != "client_id"]
-        rest = [name for name in self.fields if name in self.folded]
-        return [("", shown, False), *([("More", rest, True)] if rest else [])]
+        grouped = {name for _, names, _ in self.groups for name in names}
+        plain = [name for name in self.fields if name not in grouped and name != "client_id"]
+        found: list[Group] = [("", [name for name in plain if name not in self.folded], False)]
+        for legend, names, folded in self.groups:
+            found.append((legend, [name for name in names if name in self.fields], folded))
+        rest = [name for name in plain if name in self.folded]
+        return [group for group in [*found, ("More", rest, True)] if group[1]]
 
     def clean(self) -> dict[str, Any]:
-        """Refuse text that no database and no paper can hold."""
+        """Refuse what no paper can hold, an hour that did not exist, and pieces of a liquid."""
         cleaned: dict[str, Any] = super().clean() or {}
-        for name, value in cleaned.items():
+        for name, value in list(cleaned.items()):
             if isinstance(value, str) and any(0xD800 <= ord(char) <= 0xDFFF for char in value):
                 self.add_error(name, "This text holds a broken character; type it again.")
+            if isinstance(self.fields.get(name), LocalDateTimeField) and self._missing(value):
+                self.add_error(name, "The clocks went forward over that hour; enter another.")
+        for choice, amount in self.rows:
+            self._check_unit(cleaned, choice, amount)
         return cleaned
+
+    def _missing(self, typed: datetime | None) -> bool:
+        """Whether the facility's clock never showed that hour."""
+        if typed is None:
+            return False
+        zone = ZoneInfo(self.facility.zone)
+        there = typed.replace(tzinfo=zone).astimezone(ZoneInfo("UTC")).astimezone(zone)
+        return there.replace(tzinfo=None) != typed
+
+    def _check_unit(self, cleaned: dict[str, Any], choice: str, amount: str) -> None:
+        item, typed = item_of(cleaned.get(choice)), cleaned.get(amount)
+        if item is None or typed is None or typed.value is None:
+            return
+        if item.unit == Unit.PIECE and typed.unit != "pieces":
+            self.add_error(amount, f"{item.name} is counted: enter pieces, not {typed.unit}.")
+        if item.unit != Unit.PIECE and typed.unit == "pieces":
+            self.add_error(amount, f"{item.name} is kept by weight: choose a weight or volume.")
 
     @property
     def moment(self) -> datetime:
         """Return when the act happened."""
-        at: datetime = self.cleaned_data["at"]
-        return at.replace(tzinfo=ZoneInfo(self.facility.zone))
+        return self.moment_of("at")
 
-    def clean_at(self) -> datetime:
-        """Return the time as typed, in the facility's zone; an hour that did not exist is asked."""
-        typed: datetime = self.cleaned_data["at"].replace(tzinfo=None)
-        zone = ZoneInfo(self.facility.zone)
-        there = typed.replace(tzinfo=zone).astimezone(ZoneInfo("UTC")).astimezone(zone)
-        if there.replace(tzinfo=None) != typed:
-            raise forms.ValidationError("The clocks went forward over that hour; enter another.")
-        return typed
+    def moment_of(self, name: str) -> datetime:
+        """Return a time of the form, in the facility's zone."""
+        typed: datetime = self.cleaned_data[name]
+        return typed.replace(tzinfo=ZoneInfo(self.facility.zone))
 
     def client(self) -> tuple[UUID, Any]:
         """Return the form's own id and its content, by which a repeat is told."""
@@ -98,4 +144,39 @@ class RecordForm(forms.Form):
         """Put a refusal beside its field, keeping all that was typed."""
         self.refused = True
         self.would_redivide = isinstance(error, WouldRedivide)
-        self.add_error(error.field if error.field in self.fields else None, error.message)
+        self.add_error(self.beside(error), error.message)
+
+    def beside(self, error: RecordingError) -> str | None:
+        """Return the field a refusal stands beside, or ``None`` for the whole form.
+
+        Without a field of that name: the row whose lot or vessel the refusal names, or the only
+        row there is.
+        """
+        if error.field in self.fields:
+            return error.field
+        chosen = [row for row in self.rows if self._chose(row[0])]
+        named = [row for row in chosen if names_it(error.message, self.cleaned_data[row[0]])]
+        if not named and len(chosen) == 1:
+            named = chosen
+        for choice, amount in named:
+            return amount if error.field in AMOUNT_WORDS and amount in self.fields else choice
+        first = f"{error.field}_1"
+        return first if first in self.fields else None
+
+    def _chose(self, name: str) -> bool:
+        return name in self.fields and self.cleaned_data.get(name) is not None
+
+
+def item_of(choice: Any) -> Item | None:
+    """Return what a chosen lot, sale line or item is of; ``None`` for a vessel."""
+    if isinstance(choice, Draw):
+        choice = choice.lot
+    if isinstance(choice, Lot):
+        choice = choice.item
+    return choice if isinstance(choice, Item) else None
+
+
+def names_it(message: str, choice: Any) -> bool:
+    """Whether a sentence names a lot or vessel: "Tank 1" is not in "Tank 12 is empty"."""
+    words = choice.lot.code if isinstance(choice, Draw) else str(choice)
+    return re.search(rf"(?<!\w){re.escape(words)}(?!\w)", message) is not None

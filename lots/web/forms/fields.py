@@ -1,6 +1,7 @@
 """The inputs every record form is made of: amounts with units, times, lots and vessels."""
 
 from collections.abc import Sequence
+from datetime import datetime
 from decimal import Decimal
 from typing import Any
 
@@ -101,20 +102,31 @@ class DensityFields(forms.Form):
 
     def density(self) -> DensityReading | None:
         """Return the reading typed, or ``None`` where there is none."""
-        typed: Typed = self.cleaned_data.get("brix") or NOT_MEASURED
-        if typed.value is None:
-            return None
-        device = self.cleaned_data.get("device") or "hydrometer-60"
-        instrument: Instrument | None = self.cleaned_data.get("instrument")
-        return DensityReading(
-            value=typed.value,
-            unit=typed.unit,
-            device="refractometer" if device == "refractometer" else "hydrometer",
-            sample=self.cleaned_data.get("sample_temperature") or NOT_MEASURED,
-            reference_celsius=20.0 if device == "hydrometer-68" else 15.56,
-            compensates=device == "compensating",
-            instrument=instrument,
-        )
+        return reading_of(self.cleaned_data)
+
+
+def reading_of(
+    data: dict[str, Any],
+    number: str = "brix",
+    sample: str = "sample_temperature",
+    at: datetime | None = None,
+) -> DensityReading | None:
+    """Return the density reading of some cleaned fields, or ``None`` where no number is."""
+    typed: Typed = data.get(number) or NOT_MEASURED
+    if typed.value is None:
+        return None
+    device = data.get("device") or "hydrometer-60"
+    instrument: Instrument | None = data.get("instrument")
+    return DensityReading(
+        value=typed.value,
+        unit=typed.unit,
+        device="refractometer" if device == "refractometer" else "hydrometer",
+        sample=data.get(sample) or NOT_MEASURED,
+        reference_celsius=20.0 if device == "hydrometer-68" else 15.56,
+        compensates=device == "compensating",
+        instrument=instrument,
+        at=at,
+    )
 
 
 class LotChoice(forms.ModelChoiceField):

@@ -1,21 +1,18 @@
-"""Forms of the sap side: collection, concentration and the whole boil."""
+"""Forms of the sap side: collection and concentration."""
 
 from typing import Any
 
 from django import forms
 
 from lots.models import Facility, Item, ItemKind, Place, PlaceKind, Step
-from lots.recording import boil, sap
+from lots.recording import sap
 from lots.recording._sources import FromVessel
 from lots.recording.context import Context
 from lots.recording.errors import RecordingError
 
 from . import fields
-from .base import LocalDateTimeInput, RecordForm
+from .base import LocalDateTimeField, RecordForm
 
-EVAPORATOR_CAUTION = (
-    "Syrup at the draw-off burns at once and sticks. Gloves, sleeves, and nobody behind you."
-)
 PRESSURE_CAUTION = "RO pumps run at pressure that injects water under skin. Stop before opening."
 
 
@@ -84,7 +81,8 @@ class ConcentrationForm(fields.DensityFields, RecordForm):
     title = "Concentrate"
     caution = PRESSURE_CAUTION
     field_order = ("at", "ended_at", "machine", "source", "taken", "into", "amount", "brix")
-    ended_at = forms.DateTimeField(label="Ended", widget=LocalDateTimeInput())
+    rows = (("source", "taken"),)
+    ended_at = LocalDateTimeField(label="Ended")
     emptied = forms.BooleanField(label="The source tank is empty", required=False)
     note = forms.CharField(required=False, widget=forms.Textarea(attrs={"rows": 2}))
     folded = ("device", "permeate", "pressure", "note")
@@ -112,7 +110,7 @@ class ConcentrationForm(fields.DensityFields, RecordForm):
         return sap.record_concentration(
             context,
             at=self.moment,
-            ended_at=data["ended_at"].replace(tzinfo=self.moment.tzinfo),
+            ended_at=self.moment_of("ended_at"),
             machine=data["machine"],
             sources=[source],
             into=data["into"],
@@ -122,116 +120,4 @@ class ConcentrationForm(fields.DensityFields, RecordForm):
             permeate=data["permeate"],
             pressure=data["pressure"],
             note=data["note"],
-        )
-
-
-class BoilForm(RecordForm):
-    """Lighting the fire."""
-
-    title = "Boil"
-    verb = "Open the boil"
-    caution = EVAPORATOR_CAUTION
-    since_last_run = forms.ChoiceField(
-        label="Since the last boil the pans were",
-        choices=[
-            ("left as they were", "left as they were"),
-            ("emptied", "emptied"),
-            ("rinsed", "rinsed"),
-            ("washed", "washed"),
-        ],
-    )
-    people = forms.CharField(label="People", required=False, max_length=200)
-
-    def build(self, facility: Facility) -> None:
-        """Offer the evaporators."""
-        self.fields["evaporator"] = forms.ModelChoiceField(places(facility, PlaceKind.EVAPORATOR))
-        self.fields["water_boiling"] = fields.temperature(facility, "Water boils at, this morning")
-        self.order_fields(("at", "evaporator", "water_boiling", "since_last_run", "people"))
-
-    def record(self, context: Context) -> Step:
-        """Open the boil."""
-        data = self.cleaned_data
-        return boil.open_boil(
-            context,
-            at=self.moment,
-            evaporator=data["evaporator"],
-            water_boiling=data["water_boiling"],
-            since_last_run=data["since_last_run"],
-            people=data["people"],
-        )
-
-
-class FeedForm(RecordForm):
-    """Feeding a running boil."""
-
-    title = "Feed"
-    verb = "Record feed"
-    emptied = forms.BooleanField(label="The tank is empty", required=False)
-
-    def build(self, facility: Facility) -> None:
-        """Offer the tanks."""
-        self.fields["source"] = forms.ModelChoiceField(
-            places(facility, PlaceKind.TANK), label="From tank"
-        )
-        self.fields["taken"] = fields.volume(facility, "Amount (empty: all)")
-
-    def record_on(self, context: Context, step: Step) -> Step:
-        """Record the feed."""
-        data = self.cleaned_data
-        source = FromVessel(data["source"], data["taken"], data["emptied"])
-        return boil.feed_boil(context, boil=step, at=self.moment, sources=[source])
-
-
-class DrawOffForm(fields.DensityFields, RecordForm):
-    """Letting syrup out of the pan."""
-
-    title = "Draw-off"
-    verb = "Record draw-off"
-    caution = EVAPORATOR_CAUTION
-    folded = ("device",)
-
-    def build(self, facility: Facility) -> None:
-        """Offer the receiving vessels."""
-        self.fields["into"] = forms.ModelChoiceField(places(facility, *TANKS))
-        self.fields["amount"] = fields.volume(facility, "Syrup")
-        self.fields["temperature"] = fields.temperature(facility, "Pan temperature")
-        self.fields["sample_temperature"] = fields.temperature(facility, "Sample temperature")
-        self.order_fields(("at", "amount", "brix", "sample_temperature", "into", "temperature"))
-
-    def record_on(self, context: Context, step: Step) -> Step:
-        """Record the draw-off."""
-        data = self.cleaned_data
-        draw = boil.DrawOff(
-            self.moment, data["into"], data["amount"], self.density(), data["temperature"]
-        )
-        item = the_item(self.facility, ItemKind.SYRUP)
-        boil.draw_off(context, boil=step, item=item, draw=draw)
-        return step
-
-
-class CloseBoilForm(fields.DensityFields, RecordForm):
-    """Letting the fire out."""
-
-    title = "Close the boil"
-    verb = "Close the boil"
-    emptied = forms.BooleanField(label="The pans were emptied", required=False)
-    folded = ("device", "sample_temperature")
-
-    def build(self, facility: Facility) -> None:
-        """Ask what stays in the pans."""
-        self.fields["stays"] = fields.volume(facility, "Stays in the pans (empty: not measured)")
-        self.fields["sample_temperature"] = fields.temperature(facility, "Sample temperature")
-        self.order_fields(("at", "stays", "brix", "emptied"))
-
-    def record_on(self, context: Context, step: Step) -> Step:
-        """Close it."""
-        data = self.cleaned_data
-        return boil.close_boil(
-            context,
-            boil=step,
-            at=self.moment,
-            contents=the_item(self.facility, ItemKind.CONTENTS),
-            stays=data["stays"],
-            brix=self.density(),
-            emptied=data["emptied"],
         )

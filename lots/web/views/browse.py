@@ -17,7 +17,7 @@ from lots.rules.roles import Action
 from lots.tracing import find, story
 
 from ..access import allow, facility_of, get_lot, public
-from ..screens import OPENERS, SCREENS
+from ..screens import FORMS
 from ..tables import JournalTable, LotTable
 from ..words import amount_words, lot_sentence
 
@@ -41,7 +41,7 @@ def today(request: HttpRequest, slug: str) -> HttpResponse:
         "title": "Today",
         "running": steps.filter(ended_at=None).order_by("started_at"),
         "latest": steps.order_by("-started_at", "-pk")[:8],
-        "screens": [(kind, form.title) for kind, form in {**SCREENS, **OPENERS}.items()],
+        "screens": [(kind, form.title) for kind, form in FORMS.items()],
         "holds": Hold.objects.filter(lot__facility=facility, ended_at=None)
         .select_related("lot__item")
         .order_by("placed_at"),

@@ -16,16 +16,15 @@ from lots.rules.roles import Action
 
 from ..access import allow, context_of, facility_of, get_step
 from ..forms.base import RecordForm
-from ..screens import OPENERS, RUNNING, SCREENS
+from ..screens import FORMS, RUNNING
 
 
 @allow(Action.RECORD)
 def record(request: HttpRequest, slug: str, kind: str) -> HttpResponse:
     """Show a step's form, or write its record."""
-    screens = {**SCREENS, **OPENERS}
-    if kind not in screens:
+    if kind not in FORMS:
         raise Http404
-    form = screens[kind](facility_of(request), request.POST if request.method == "POST" else None)
+    form = FORMS[kind](facility_of(request), request.POST if request.method == "POST" else None)
     if request.method == "POST" and form.is_valid():
         try:
             step = form.record(context_of(request, form.client()))
@@ -70,7 +69,8 @@ def running(request: HttpRequest, slug: str, uuid: UUID, act: str) -> HttpRespon
     acts = RUNNING.get(step.kind, {})
     if act not in acts:
         raise Http404
-    form = acts[act](facility_of(request), request.POST if request.method == "POST" else None)
+    typed = request.POST if request.method == "POST" else None
+    form = acts[act](facility_of(request), typed, step=step)
     if request.method == "POST" and form.is_valid():
         try:
             form.record_on(context_of(request, form.client()), step)  # type: ignore[attr-defined]
