@@ -8,7 +8,7 @@ from django.urls import reverse
 from openpyxl import load_workbook
 
 from lots.documents import packet, packet_pdf, packet_xlsx
-from lots.recording import goods_out
+from lots.recording import amend, goods_out
 from lots.recording._sources import FromLot
 from tests.factories import pieces
 
@@ -82,3 +82,25 @@ def test_the_command_writes_both_files(house, tmp_path):
     call_command("packet", jars.code, out=tmp_path, stdout=io.StringIO())
     assert (tmp_path / "packet.pdf").read_bytes().startswith(b"%PDF")
     assert load_workbook(tmp_path / "packet.xlsx")["Lots"]["A2"].value == jars.code
+
+
+def test_what_was_typed_in_a_record_stands_in_the_packet(house):
+    house.receive_aid()
+    house.collect()
+    house.boil()
+    house.filter()
+    jars = house.fill()
+    sale = goods_out.record_sale(
+        house.context(hours=7), at=house.at(7), sold=[FromLot(jars, pieces(3))],
+        customer=house.customer, document="INV-9", address="Back door",
+    )  # fmt: skip
+    amend.amend_step(
+        house.context(house.lead, 8), step=sale, field="document", new="INV-10", reason="misread"
+    )
+    made = packet.build(house.facility, [jars], house.at(9))
+
+    text = packet_pdf.html(made)
+    for words in ("INV-10", "INV-9", "misread", "Delivered to: Back door", "Corner Shop"):
+        assert words in text
+    heads = {sheet.title for sheet in made.sheets}
+    assert {"Sales", "Corrections", "Cleaning", "Received", "Not posted"} <= heads

@@ -7,6 +7,7 @@ from django.http import Http404, HttpRequest, HttpResponse
 from django.shortcuts import redirect, render
 from django.utils import timezone
 
+from lots.documents import details
 from lots.models import Lot, PrintedCode, Step
 from lots.recording import decisions
 from lots.recording._door import AlreadyRecorded
@@ -122,6 +123,7 @@ def step(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
         and timezone.now() - found.recorded_at <= decisions.UNDO_WINDOW,
         "waiting": waiting_for_division(found) if found.late else [],
         "acts": _acts(found),
+        "details": details.rows(found),
         "reserved": _reserved(found),
     }
     return render(request, "lots/step.html", context)
