@@ -23,6 +23,7 @@ from lots.tracing import story
 from . import details
 
 Row = tuple[str, ...]
+WIDE = frozenset({"Finding", "Details", "Deviation", "What was done", "Why not posted"})
 
 
 @dataclass(frozen=True)
@@ -37,6 +38,11 @@ class Sheet:
     rows: tuple[Row, ...]
     paper: bool = True
 
+    @property
+    def wide(self) -> frozenset[str]:
+        """Return the heads of columns that hold sentences: paper gives them more room."""
+        return WIDE.intersection(self.heads)
+
 
 @dataclass(frozen=True)
 class Material:
@@ -50,6 +56,10 @@ class Material:
     def when(self, moment: datetime | None) -> str:
         """Return a time by the facility's clock."""
         return f"{moment.astimezone(self.zone):%Y-%m-%d %H:%M}" if moment else ""
+
+    def step(self, step: Step) -> str:
+        """Return what a record is and when it began, by the facility's clock."""
+        return step.in_words(str(self.zone))
 
 
 def gather(lots: Sequence[Lot], zone: ZoneInfo) -> Material:
@@ -106,7 +116,7 @@ def _reading_rows(material: Material, readings: Iterable[Reading]) -> tuple[Row,
     return tuple(
         (
             reading.lot.code if reading.lot else "",
-            str(reading.step),
+            material.step(reading.step),
             reading.get_kind_display(),
             f"{reading.typed_value} {reading.typed_unit}".strip(),
             f"{reading.sample_typed} {reading.sample_unit}".strip(),
@@ -192,7 +202,7 @@ def corrections_sheet(material: Material) -> Sheet:
     """Return what was corrected, divided anew or voided: old and new."""
     rows = [
         (
-            str(one.step), one.field, one.old, one.new, one.reason, str(one.by),
+            material.step(one.step), one.field, one.old, one.new, one.reason, str(one.by),
             material.when(one.at),
         )
         for one in Amendment.objects.filter(step__in=material.steps)
@@ -202,7 +212,7 @@ def corrections_sheet(material: Material) -> Sheet:
     ended = Draw.objects.filter(step__in=material.steps, ended_at__isnull=False)
     rows += [
         (
-            str(draw.step), f"draw of {draw.lot.code}", amount(draw.lot, draw.quantity),
+            material.step(draw.step), f"draw of {draw.lot.code}", amount(draw.lot, draw.quantity),
             "ended; see the trace for what stands", "", str(draw.ended_by),
             material.when(draw.ended_at),
         )
@@ -318,7 +328,7 @@ def events_sheet(material: Material) -> Sheet:
     found = StepEvent.objects.filter(step__in=material.steps).select_related("step", "recorded_by")
     rows = [
         (
-            str(event.step), event.kind, material.when(event.at),
+            material.step(event.step), event.kind, material.when(event.at),
             "; ".join(f"{key}: {value}" for key, value in sorted(event.detail.items()) if value),
             str(event.recorded_by),
         )

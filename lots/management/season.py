@@ -174,51 +174,45 @@ def _concentrate(season: Season, row: dict[str, Any], at: datetime) -> None:
     )  # fmt: skip
 
 
-def _boil(season: Season, row: dict[str, Any], at: datetime) -> None:
-    day, context = row["day"], season.context(row)
+def _boil_open(season: Season, row: dict[str, Any], at: datetime) -> None:
     fire = boil.open_boil(
-        context, at=at, evaporator=season.place("Evaporator"),
+        season.context(row), at=at, evaporator=season.place("Evaporator"),
         water_boiling=Typed(Decimal(row["water"]), "°F"), since_last_run="left as they were",
     )  # fmt: skip
     defoamer = FromLot(
         season.material("Defoamer"), Typed(Decimal(row["defoam"]), "lb"), DrawRole.AID
     )
     sources = [*(FromVessel(season.place(name)) for name in row["sources"]), defoamer]
-    boil.feed_boil(context, boil=fire, at=at, sources=sources)
-    for number, off in enumerate(row["offs"]):
-        if row["put_back"] and number == 1:
-            _light_draw_off(season, fire, context, season.at(day, off["hour"] - 1))
-        draw = boil.DrawOff(
-            season.at(day, off["hour"]), season.place("Batch tank"),
-            Typed(Decimal(off["amount"]), "US gal"), density(off["brix"]),
-            Typed(Decimal("218.9"), "°F"),
-        )  # fmt: skip
-        boil.draw_off(context, boil=fire, item=season.item("Syrup"), draw=draw)
+    boil.feed_boil(season.context(row), boil=fire, at=at, sources=sources)
+
+
+def _running(season: Season) -> Step:
+    return Step.objects.get(facility=season.facility, kind=StepKind.BOIL, ended_at=None)
+
+
+def _boil_off(season: Season, row: dict[str, Any], at: datetime) -> None:
+    draw = boil.DrawOff(
+        at, season.place("Batch tank"), measure(row["amount"]), density(row["brix"]),
+        Typed(Decimal("218.9"), "°F"),
+    )  # fmt: skip
+    boil.draw_off(season.context(row), boil=_running(season), item=season.item("Syrup"), draw=draw)
+
+
+def _boil_light(season: Season, row: dict[str, Any], at: datetime) -> None:
+    amount = Typed(Decimal(row["amount"]), "US gal")
+    light = boil.DrawOff(at, season.place("Filtered tank"), amount, density(row["brix"]))
+    fire = _running(season)
+    lot = boil.draw_off(season.context(row), boil=fire, item=season.item("Syrup"), draw=light)
+    boil.put_back(
+        season.context(row), boil=fire, lot=lot, at=at + timedelta(minutes=4), amount=amount
+    )
+
+
+def _boil_close(season: Season, row: dict[str, Any], at: datetime) -> None:
     boil.close_boil(
-        context, boil=fire, at=season.at(day, row["end"]), contents=season.item("Pan contents"),
+        season.context(row), boil=_running(season), at=at, contents=season.item("Pan contents"),
         stays=measure(row["stays"]), brix=compensated(row["stays_brix"]),
     )  # fmt: skip
-
-
-def _light_draw_off(season: Season, fire: Step, context: Context, at: datetime) -> None:
-    light = boil.DrawOff(
-        at, season.place("Filtered tank"), Typed(Decimal(3), "US gal"), density(["58.0", "60"])
-    )
-    lot = boil.draw_off(context, boil=fire, item=season.item("Syrup"), draw=light)
-    boil.put_back(
-        context, boil=fire, lot=lot, at=at + timedelta(minutes=4),
-        amount=Typed(Decimal(3), "US gal"),
-    )  # fmt: skip
-
-
-def _open_boil(season: Season, row: dict[str, Any], at: datetime) -> None:
-    fire = boil.open_boil(
-        season.context(row), at=at, evaporator=season.place("Evaporator"),
-        water_boiling=Typed(Decimal("211.4"), "°F"), since_last_run="left as they were",
-    )  # fmt: skip
-    boil.feed_boil(
-        season.context(row), boil=fire, at=at, sources=[FromVessel(season.place("Tank 1"))]
-    )
 
 
 def _filter(season: Season, row: dict[str, Any], at: datetime) -> None:
@@ -262,12 +256,14 @@ def _blend(season: Season, row: dict[str, Any], at: datetime) -> None:
     )  # fmt: skip
 
 
-def _bottle(season: Season, row: dict[str, Any], at: datetime) -> None:
+def _reheat(season: Season, row: dict[str, Any], at: datetime) -> None:
     syrup.record_mixture(
-        season.context(row), kind=StepKind.REHEAT, at=at - timedelta(hours=0.5),
-        sources=[FromVessel(season.place(row["drum"]))], into=season.place("Canner"),
-        item=season.item("Syrup"),
+        season.context(row), kind=StepKind.REHEAT, at=at, into=season.place("Canner"),
+        sources=[FromVessel(season.place(row["drum"]))], item=season.item("Syrup"),
     )  # fmt: skip
+
+
+def _bottle(season: Season, row: dict[str, Any], at: datetime) -> None:
     used = [row["container"], "Closure", "Label, amber, version 3"]
     run = container_fill.Run(
         product=season.item(row["product"]), made=row["made"], rejected=row["rejected"],
@@ -362,15 +358,18 @@ def _remove(season: Season, row: dict[str, Any], at: datetime) -> None:
 
 ACTS: dict[str, Callable[[Season, dict[str, Any], datetime], None]] = {
     "blend": _blend,
-    "boil": _boil,
+    "boil-close": _boil_close,
+    "boil-light": _boil_light,
+    "boil-off": _boil_off,
+    "boil-open": _boil_open,
     "bottle": _bottle,
     "clean": _clean,
     "collect": _collect,
     "drums": _drums,
     "filter": _filter,
-    "open-boil": _open_boil,
     "opening": _opening,
     "receive": _receive,
+    "reheat": _reheat,
     "release-opening": _release_opening,
     "remove": _remove,
     "resolve-hold": _resolve,

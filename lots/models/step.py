@@ -1,6 +1,7 @@
 """Recorded acts: the header every step shares, its events, people and readings."""
 
 import uuid
+from zoneinfo import ZoneInfo
 
 from django.db import models
 from django.db.models import F, Q
@@ -70,7 +71,12 @@ class Step(models.Model):
         ]
 
     def __str__(self) -> str:
-        return f"{self.get_kind_display()} {self.started_at:%Y-%m-%d %H:%M}"
+        return f"{self.get_kind_display()} {self.started_at:%Y-%m-%d %H:%M} UTC"
+
+    def in_words(self, zone: str) -> str:
+        """Return what it is and when it began, by the clock of a zone."""
+        moment = self.started_at.astimezone(ZoneInfo(zone))
+        return f"{self.get_kind_display()} {moment:%Y-%m-%d %H:%M}"
 
 
 class StepEvent(models.Model):

@@ -102,12 +102,12 @@ class Writer:
             facility=self.facility,
             kind=kind,
             started_at=at,
-            late=not self.is_live(at),
+            late=not self.is_live(fields.get("ended_at") or at),
             recorded_at=self.now,
             recorded_by=self.by,
             **fields,
         )
-        self.label = f"{step.get_kind_display()} {at:%Y-%m-%d %H:%M}"
+        self.label = step.in_words(self.facility.zone)
         if self.answer is None:
             self.answer = step
         return self.touch(step)

@@ -47,7 +47,7 @@ def take(
     writer.own(vessel)
     later = _vessels.later_takes(vessel, at).exclude(step=step)
     if not writer.redividing and later.exists():
-        raise WouldRedivide(_vessels.later_words(later))
+        raise WouldRedivide(_vessels.later_words(later, writer.facility.zone))
     if writer.redividing:
         rewind(writer, vessel, at, but=step)
     asked = VesselTake.objects.create(

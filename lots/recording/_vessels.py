@@ -124,9 +124,9 @@ def later_takes(vessel: Place, at: datetime) -> QuerySet[VesselTake]:
     )
 
 
-def later_words(takes: Iterable[VesselTake]) -> str:
+def later_words(takes: Iterable[VesselTake], zone: str) -> str:
     """Return which later records a re-division would change, in a sentence."""
-    names = sorted({f"{take.step} ({take.vessel})" for take in takes})
+    names = sorted({f"{take.step.in_words(zone)} ({take.vessel})" for take in takes})
     return (
         f"Later records drew from there: {'; '.join(names)}. Recording this divides them anew; "
         "confirm it, or keep this entry for a lead."

@@ -29,7 +29,7 @@ def amend_step(context: Context, *, step: Step, field: str, new: str, reason: st
         if old == new:
             raise RecordingError("That is what stands there already.", field="new")
         Step.objects.filter(pk=step.pk).update(**{field: new})
-        writer.label = f"Correction of {step}"
+        writer.label = f"Correction of {step.in_words(writer.facility.zone)}"
         writer.reason = reason
         writer.touch(step)
         return writer.touch(
@@ -127,6 +127,6 @@ def divide_anew(context: Context, *, step: Step) -> list[VesselTake]:
         for lot in step.made_lots.select_related("put_in"):
             if lot.put_in is not None and lot.put_in.is_vessel:
                 _redivide.rewind(writer, lot.put_in, lot.made_at)
-        writer.label = f"Re-division after {step}"
+        writer.label = f"Re-division after {step.in_words(writer.facility.zone)}"
         writer.answer = step
         return takes

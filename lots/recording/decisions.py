@@ -154,7 +154,9 @@ def _refuse_running(lot: Lot) -> None:
     behind = back(lot.made_by_id).steps
     running = Step.objects.filter(pk__in=behind, ended_at=None, voided_at=None).first()
     if running is not None:
-        raise RecordingError(f"{running} behind {lot.code} is still open; close it first.")
+        raise RecordingError(
+            f"{running.in_words(lot.facility.zone)} behind {lot.code} is still open; close it first."
+        )
 
 
 def release_lot(context: Context, *, lot: Lot, reason: str, shown: str) -> Lot:
@@ -205,7 +207,7 @@ def void_step(context: Context, *, step: Step, reason: str) -> Step:
         Step.objects.filter(pk=step.pk).update(
             voided_at=writer.now, ended_at=step.ended_at or writer.now
         )
-        writer.label = f"Void {step}"
+        writer.label = f"Void {step.in_words(writer.facility.zone)}"
         writer.reason = reason
         writer.answer = step
         step.refresh_from_db()
