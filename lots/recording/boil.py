@@ -218,7 +218,7 @@ def _event(writer: Writer, step: Step, kind: str, at: datetime, detail: dict) ->
         raise RecordingError("That is before the boil began.", field="at")
     if writer.answer is None:
         writer.answer = step
-    writer.label = f"{kind} {at:%Y-%m-%d %H:%M}"
+    writer.label = f"{kind} in {step.in_words(writer.facility.zone)}"
     return writer.touch(
         StepEvent.objects.create(
             step=step,

@@ -80,7 +80,7 @@ def close_container_fill(
         Step.objects.filter(pk=step.pk).update(ended_at=ended_at)
         step.refresh_from_db()
         writer.answer = writer.touch(step)
-        writer.label = f"Container fill {step.started_at:%Y-%m-%d %H:%M}"
+        writer.label = step.in_words(writer.facility.zone)
         code = PrintedCode.objects.get(uuid=step.detail["printed_code"])
         return _fill(writer, step, sources, run, code)
 

@@ -154,9 +154,8 @@ def _refuse_running(lot: Lot) -> None:
     behind = back(lot.made_by_id).steps
     running = Step.objects.filter(pk__in=behind, ended_at=None, voided_at=None).first()
     if running is not None:
-        raise RecordingError(
-            f"{running.in_words(lot.facility.zone)} behind {lot.code} is still open; close it first."
-        )
+        name = running.in_words(lot.facility.zone)
+        raise RecordingError(f"{name} behind {lot.code} is still open; close it first.")
 
 
 def release_lot(context: Context, *, lot: Lot, reason: str, shown: str) -> Lot:
