@@ -64,6 +64,7 @@ class Writer:
         self.answer: Step | None = None
         # A confirmed re-division: what was taken back, asked again when the record is written.
         self.redividing = False
+        self.accepts_differences = False
         self.rewound: dict[int, VesselTake] = {}
         self.before_arrival: Callable[[Place, datetime], None] = lambda place, at: None
 

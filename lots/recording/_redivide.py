@@ -57,7 +57,7 @@ def take(
         typed_value=amount.text,
         typed_unit=amount.unit if amount.text else "",
         emptied=emptied,
-        accept_difference=accept_difference,
+        accept_difference=accept_difference or writer.accepts_differences,
     )
     return _vessels.answer(writer, writer.touch(asked))
 

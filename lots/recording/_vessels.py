@@ -11,7 +11,7 @@ from lots.quantities import rounding
 
 from . import _ledger
 from ._door import Writer
-from .errors import NotEnough
+from .errors import GaugeDifference, NotEnough
 from .measures import Typed, liquid_mass
 
 
@@ -101,10 +101,16 @@ def _book_difference(
     if difference > 0 and not again and (not accepted or difference > tolerance):
         kilograms = rounding.fixed(book / 1_000_000, 1)
         entered = rounding.fixed((book + difference) / 1_000_000, 1)
+        percent = writer.facility.gauge_tolerance_percent
+        words = f"{asked.vessel.name} holds {kilograms} kg by the book; you entered {entered} kg. "
+        if difference <= tolerance:
+            raise GaugeDifference(
+                words + f"That is within the {percent} % of its gauge: confirm to take all and "
+                "record the difference.",
+                field="quantity",
+            )
         raise NotEnough(
-            f"{asked.vessel.name} holds {kilograms} kg by the book; you entered {entered} kg. "
-            "Check the gauge, or tick “record the difference” if it lies within "
-            f"{writer.facility.gauge_tolerance_percent} %.",
+            words + f"That is more than the {percent} % of its gauge; check the number.",
             field="quantity",
         )
     if difference > 0 or accepted:

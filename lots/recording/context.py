@@ -29,6 +29,8 @@ class Context:
     reason: str = ""
     # Confirmed: a late act may divide later draws anew, in its own transaction.
     redivide: bool = False
+    # Confirmed: what a gauge shows above the book, within its tolerance, is booked.
+    accept_differences: bool = False
 
     @contextmanager
     def open(self, name: str, action: Action = Action.RECORD) -> Iterator[Writer]:
@@ -42,6 +44,7 @@ class Context:
             now=self.now,
             client=self.client,
         ) as writer:
+            writer.accepts_differences = self.accept_differences
             if self.redivide:
                 writer.redividing = True
                 writer.before_arrival = partial(_redivide.rewind, writer)

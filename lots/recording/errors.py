@@ -18,6 +18,10 @@ class NotEnough(RecordingError):
     """More was drawn than the book holds."""
 
 
+class GaugeDifference(NotEnough):
+    """More than the book holds, but within the gauge tolerance: taken when it is confirmed."""
+
+
 class OnHold(RecordingError):
     """The lot is set apart and may not go where the record would take it."""
 

@@ -143,3 +143,27 @@ def add_instrument(context: Context, **fields: Any) -> Instrument:
 def _refuse_twin(model: type, context: Context, name: str) -> None:
     if model.objects.filter(facility=context.facility, name=name).exists():
         raise RecordingError(f"{name} is registered already.", field="name")
+
+
+FIXED = {Item: frozenset({"kind", "unit"}), Place: frozenset({"kind"}), Partner: frozenset()}
+
+
+def change_row(context: Context, row: Place | Item | Partner, **fields: Any) -> Any:
+    """Change a registered place, item or partner; what its lots stand on stays as it is."""
+    model = type(row)
+    used = FIXED[model] & {name for name, value in fields.items() if getattr(row, name) != value}
+    with context.open(f"{model._meta.verbose_name} changed") as writer:
+        writer.own(row)
+        if used and model is Item and row.lots.exists():
+            raise RecordingError(f"{row} has lots already; its kind stays.", field="kind")
+        if used and model is Place and row.stock.exists():
+            raise RecordingError(f"{row} holds something; its kind stays.", field="kind")
+        name = fields.get("name", row.name)
+        twins = model.objects.filter(facility=writer.facility, name=name).exclude(pk=row.pk)
+        if model is Partner:
+            twins = twins.filter(kind=fields.get("kind", row.kind))
+        if twins.exists():
+            raise RecordingError(f"{name} is registered already.", field="name")
+        model.objects.filter(pk=row.pk).update(**fields)
+        writer.label = f"{name} changed"
+        return writer.touch(model.objects.get(pk=row.pk))

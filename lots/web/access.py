@@ -70,6 +70,7 @@ def context_of(request: HttpRequest, client: tuple[UUID, Any] | None = None) -> 
         request.user,  # type: ignore[arg-type]
         client=client,
         redivide="redivide" in request.POST,
+        accept_differences="difference" in request.POST,
     )
 
 

@@ -1,14 +1,15 @@
 """Corrections: old beside new; undo within two minutes."""
 
 import json
+from dataclasses import replace
 
 import pytest
 
-from lots.models import JournalEntry, Lot
-from lots.recording import amend, decisions, goods_out
-from lots.recording._sources import FromLot
+from lots.models import JournalEntry, Lot, StepKind
+from lots.recording import amend, decisions, goods_out, setup, syrup
+from lots.recording._sources import FromLot, FromVessel
 from lots.recording.context import Context
-from lots.recording.errors import NotAllowed, RecordingError
+from lots.recording.errors import GaugeDifference, NotAllowed, NotEnough, RecordingError
 from lots.tracing import verify
 from tests.factories import gallons, pieces
 
@@ -105,3 +106,36 @@ def test_an_official_detention_ends_only_with_the_authoritys_reference(house):
 
     assert lot.state == "released"
     assert "VT-2026-17" in lot.holds.get().decision_reason
+
+
+def test_a_partner_changes_and_an_items_kind_stays_once_it_has_lots(house):
+    context = house.context(hours=1)
+    changed = setup.change_row(context, house.customer, phone="802-555-0199")
+    assert changed.phone == "802-555-0199"
+    house.receive_aid()
+    with pytest.raises(RecordingError, match="its kind stays"):
+        setup.change_row(context, house.items["aid"], kind="cleaner")
+    with pytest.raises(RecordingError, match="registered already"):
+        setup.change_row(context, house.items["aid"], name="Sap")
+    assert list(verify.image_faults()) == []
+
+
+def test_a_gauge_difference_is_taken_when_confirmed_and_no_more_than_its_tolerance(house):
+    house.collect("100")
+    tank, into = house.places["Tank 1"], house.places["Tank 2"]
+
+    def take(amount, **confirmed):
+        context = replace(house.context(hours=1), **confirmed)
+        return syrup.record_mixture(
+            context, kind=StepKind.TRANSFER, at=house.at(1), item=house.items["sap"], into=into,
+            sources=[FromVessel(tank, gallons(amount))],
+        )  # fmt: skip
+
+    with pytest.raises(GaugeDifference, match="within the 5 %"):
+        take("103")
+    with pytest.raises(NotEnough, match="more than the 5 %"):
+        take("110", accept_differences=True)
+    step = take("103", accept_differences=True)
+
+    assert step.adjustments.get().quantity > 0
+    assert list(verify.ledger_faults()) == []
