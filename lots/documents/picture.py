@@ -1,166 +1,151 @@
-"""The picture of a chain: a server-made SVG, left to right in time, lots and steps on a grid.
+"""The picture of a chain: a server-made SVG with time from left to right.
 
-Each box has its own cell, so no two boxes or labels can overlap. Beyond 300 lots those of one
-kind of step and day join in one box that says how many they are.
+A step is a thin upright bar with its word; a lot is a lane between bars with its code; columns
+are days. It uses attributes alone, no style, and says nothing by colour that it does not say by
+word and shape, so that it prints in black and white.
 """
 
-from collections import defaultdict
+from collections.abc import Callable
 from dataclasses import dataclass
 from html import escape
 
-from lots.models import DrawRole, Lot, Step
+from lots.models import Lot
 from lots.tracing.story import Story
 
-MOST_LOTS = 300
-CELL_WIDTH, CELL_HEIGHT = 218, 66
-BOX_WIDTH, BOX_HEIGHT = 168, 46
-LETTERS = 19  # what fits a box at 13 px
-DASHES = {
-    DrawRole.CARRY_OVER: "7 5",
-    DrawRole.AID: "2 4",
-    DrawRole.PACKAGING: "2 4",
-    DrawRole.CLEANING: "2 4",
-    DrawRole.RESIDUE: "1 7",
-}
+from . import lettering
+from .chain_draw import BAND_HEAD, DAY_GAP, GROUND, HEAD, LANE, PITCH, WORD, Frame, body, heads
+from .chain_graph import Graph, graph_of
+from .chain_layout import Layout, lay_out
+
+SHEET_COLUMNS = 5  # what a sheet of paper holds at a size that can be read
+Url = Callable[[Lot], str]
 
 
 @dataclass(frozen=True)
-class Box:
-    """One lot, step or group with its two lines of text."""
+class Picture:
+    """A drawn chain, the heads of its days apart, and what it holds."""
 
-    key: str
-    first: str
-    second: str
-    kind: str
-    asked: bool = False
-    held: bool = False
-
-
-def _cut(text: str) -> str:
-    return text if len(text) <= LETTERS else text[: LETTERS - 1] + "…"
+    svg: str
+    days: str
+    width: int
+    lots: int
+    joined: bool
 
 
-def _lot_box(lot: Lot, grouped: bool, asked: int) -> Box:
-    if grouped and lot.pk != asked:
-        day = f"{lot.made_at:%Y-%m-%d}"
-        key = f"group {lot.made_by.kind} {day}"
-        return Box(key, lot.made_by.get_kind_display(), day, "group")
-    return Box(f"lot {lot.pk}", lot.code, lot.item.name, "lot", lot.pk == asked)
+@dataclass(frozen=True)
+class Sheet:
+    """One piece of a chain cut for paper, and the days it shows."""
+
+    caption: str
+    svg: str
 
 
-def _step_box(step: Step, grouped: bool) -> Box:
-    day = f"{step.started_at:%Y-%m-%d}"
-    if grouped:
-        return Box(f"steps {step.kind} {day}", step.get_kind_display(), day, "step")
-    name = f"{day} {step.partner}" if step.partner else day
-    return Box(f"step {step.pk}", step.get_kind_display(), name, "step")
+def svg(story: Story, url: Url | None = None) -> str:
+    """Return the picture as SVG text, each lot a link where ``url`` gives its address."""
+    return draw(story, url).svg
 
 
-@dataclass
-class Graph:
-    """The boxes, how many lots each stands for, and the lines between them."""
-
-    boxes: dict[str, Box]
-    members: dict[str, set[int]]
-    edges: set[tuple[str, str, str]]
-
-
-def graph_of(story: Story) -> Graph:
-    """Return what is drawn of a story: the lots drawn, what each was made by, and into what."""
-    links = [*story.back.links, *story.forward.links]
-    grouped = len({link.lot for link in links}) > MOST_LOTS
-    graph = Graph({}, defaultdict(set), set())
-
-    def add(box: Box, member: int = 0) -> str:
-        graph.boxes.setdefault(box.key, box)
-        if member:
-            graph.members[box.key].add(member)
-        return box.key
-
-    asked = story.lot
-    here = add(_lot_box(asked, grouped, asked.pk), asked.pk)
-    graph.edges.add((add(_step_box(asked.made_by, grouped)), here, ""))
-    for link in links:
-        lot = story.lots[link.lot]
-        box = add(_lot_box(lot, grouped, asked.pk), lot.pk)
-        graph.edges.add((add(_step_box(lot.made_by, grouped)), box, ""))
-        graph.edges.add((box, add(_step_box(story.steps[link.step], grouped)), link.role))
-    return graph
-
-
-def layers(graph: Graph) -> dict[str, int]:
-    """Return each box's column: one more than the furthest box before it; cycles are cut."""
-    before: dict[str, set[str]] = defaultdict(set)
-    after: dict[str, set[str]] = defaultdict(set)
-    for start, end, _ in graph.edges:
-        if start != end:
-            before[end].add(start)
-            after[start].add(end)
-    waiting = {key: len(before[key]) for key in graph.boxes}
-    column = dict.fromkeys(graph.boxes, 0)
-    ready = sorted(key for key, count in waiting.items() if count == 0)
-    while ready:
-        key = ready.pop(0)
-        for nxt in sorted(after[key]):
-            column[nxt] = max(column[nxt], column[key] + 1)
-            waiting[nxt] -= 1
-            if waiting[nxt] == 0:
-                ready.append(nxt)
-    return column
-
-
-def svg(story: Story) -> str:
-    """Return the picture as SVG text, with a title and description for who cannot see it."""
+def draw(story: Story, url: Url | None = None) -> Picture:
+    """Return the whole picture, to be scrolled sideways, with the heads of its days apart."""
     graph = graph_of(story)
-    column = layers(graph)
-    rows: dict[int, int] = defaultdict(int)
-    place: dict[str, tuple[int, int]] = {}
-    for key in sorted(graph.boxes, key=lambda key: (column[key], graph.boxes[key].second, key)):
-        number = column[key]
-        place[key] = (24 + number * CELL_WIDTH, 24 + rows[number] * CELL_HEIGHT)
-        rows[number] += 1
-    width = 24 + (max(column.values()) + 1) * CELL_WIDTH
-    height = 24 + max(rows.values()) * CELL_HEIGHT
-    lines = [_line(place, edge) for edge in sorted(graph.edges)]
-    boxes = [
-        _box(graph.boxes[key], place[key], len(graph.members.get(key, ()))) for key in sorted(place)
-    ]
-    name = escape(story.lot.code)
+    layout = lay_out(graph)
+    frame = _frame(graph, layout, 0, len(layout.days), url)
+    width = frame.width
+    text = _wrap(story, frame, "chain", f"{_counts(story, graph, layout)} The tables say the same.")
+    days = (
+        f'<svg class="picture-days" xmlns="http://www.w3.org/2000/svg" aria-hidden="true" '
+        f'width="{width}" height="{HEAD}" viewBox="0 0 {width} {HEAD}">'
+        f'<rect width="{width}" height="{HEAD}" fill="{GROUND}"/>{heads(frame, height=HEAD)}</svg>'
+    )
+    return Picture(text, days, width, len(story.lots), len(graph.lanes) < len(story.lots))
+
+
+def sheets(story: Story, url: Url | None = None) -> list[Sheet]:
+    """Return the picture cut into pieces as wide as paper; lots that only wait are left out."""
+    graph = graph_of(story)
+    layout = lay_out(graph)
+    found = []
+    for first, last in _pieces(layout):
+        frame = _frame(graph, layout, first, last, url, waiting=False)
+        days = dict.fromkeys(f"{day.day} {day:%B %Y}" for day in layout.days[first:last])
+        ends = list(days)
+        caption = ends[0] if len(ends) == 1 else f"{ends[0]} to {ends[-1]}"
+        drawn = _wrap(story, frame, f"chain-{first}", f"{caption}.")
+        found.append(Sheet(caption, drawn))
+    return found
+
+
+def _pieces(layout: Layout) -> list[tuple[int, int]]:
+    """Return the columns of each sheet: whole days where they fit."""
+    days, found, first = layout.days, [], 0
+    while first < len(days):
+        last = min(first + SHEET_COLUMNS, len(days))
+        if last < len(days):
+            ends = (end for end in range(last, first, -1) if days[end] != days[end - 1])
+            last = next(ends, last)
+        found.append((first, last))
+        first = last
+    return found
+
+
+def _counts(story: Story, graph: Graph, layout: Layout) -> str:
+    days = len(set(layout.days))
+    parts = [f"{len(story.lots)} lots and {len(story.steps)} records on {days} days"]
+    if len(graph.lanes) < len(story.lots):
+        parts.append("the lots of one kind of record and day joined in one lane")
+    return f"Time runs left to right: {', '.join(parts)}."
+
+
+def _wrap(story: Story, frame: Frame, name: str, words: str) -> str:
+    role = "group" if frame.url else "img"
     return (
-        f'<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 {width} {height}" '
-        f'width="{width}" height="{height}" role="img" aria-labelledby="chain-title chain-desc" '
-        f'font-family="monospace" font-size="13">'
-        f'<title id="chain-title">The chain of {name}</title>'
-        f'<desc id="chain-desc">Time runs left to right. The tables below say the same.</desc>'
-        f"{''.join(lines)}{''.join(boxes)}</svg>"
+        f'<svg class="chain" xmlns="http://www.w3.org/2000/svg" role="{role}" '
+        f'viewBox="0 0 {frame.width} {frame.height}" width="{frame.width}" '
+        f'height="{frame.height}" aria-labelledby="{name}-title {name}-desc">'
+        f'<title id="{name}-title">The chain of {escape(story.lot.code)}</title>'
+        f'<desc id="{name}-desc">{escape(words)}</desc>{body(frame, name)}</svg>'
     )
 
 
-def _line(place: dict[str, tuple[int, int]], edge: tuple[str, str, str]) -> str:
-    start, end, role = edge
-    x1, y1 = place[start][0] + BOX_WIDTH, place[start][1] + BOX_HEIGHT // 2
-    x2, y2 = place[end][0], place[end][1] + BOX_HEIGHT // 2
-    middle = (x1 + x2) // 2
-    dash = f' stroke-dasharray="{DASHES[DrawRole(role)]}"' if role in DASHES else ""
-    return (
-        f'<path d="M{x1} {y1}C{middle} {y1} {middle} {y2} {x2} {y2}" fill="none" '
-        f'stroke="#4A5650" stroke-width="1.5"{dash}/>'
+def _frame(
+    graph: Graph, layout: Layout, first: int, last: int, url: Url | None, waiting: bool = True
+) -> Frame:
+    """Return where each column and row of a piece of the grid stands, in pixels."""
+    longest = max(lettering.width(lane.code, 12.5, True) for lane in graph.lanes.values())
+    pitch = max(PITCH, int(longest) + 40)
+    x, left = {}, 12 if first == 0 else pitch
+    for column in range(first, last):
+        if column == first or layout.days[column] != layout.days[column - 1]:
+            left += DAY_GAP
+        x[column] = left
+        left += pitch
+    shown = {key for key in graph.lanes if waiting or _moves(graph, layout, key, first, last)}
+    shown |= {key for key in graph.breaks if first <= layout.column[key] < last}
+    rows = {layout.row[key] for key in shown}
+    words: dict[int, int] = {}
+    for key, bar in graph.bars.items():
+        if first <= layout.column.get(key, -1) < last:
+            row = layout.span[key][0]
+            words[row] = max(words.get(row, 0), 2 if bar.note else 1)
+    bands, top, y, row = [], {}, float(HEAD), 0
+    for band in layout.bands:
+        within = [number for number in range(row, row + band.rows) if number in rows]
+        row += band.rows
+        if not within:
+            continue
+        bands.append((band.name, y))
+        y += BAND_HEAD
+        for number in within:
+            top[number] = y + words.get(number, 0) * WORD + 4
+            y = top[number] + LANE + 6
+    width, height = left + 12, int(y) + 8
+    return Frame(
+        graph, layout, first, last, frozenset(shown), pitch, x, top, bands, width, height, url
     )
 
 
-def _box(box: Box, at: tuple[int, int], members: int) -> str:
-    x, y = at
-    fill = "#E4F1EA" if box.kind == "step" else "#FBFAF6"
-    twice = (
-        f'<rect x="{x - 5}" y="{y - 5}" width="{BOX_WIDTH + 10}" height="{BOX_HEIGHT + 10}" '
-        f'fill="none" stroke="#1B2A24" stroke-width="1.5"/>'
-        if box.asked
-        else ""
-    )
-    first = f"{members} lots: {box.first}" if box.kind == "group" else box.first
-    return (
-        f'{twice}<rect class="box" x="{x}" y="{y}" width="{BOX_WIDTH}" height="{BOX_HEIGHT}" '
-        f'fill="{fill}" stroke="#1B2A24"/>'
-        f'<text x="{x + 8}" y="{y + 19}" fill="#1B2A24">{escape(_cut(first))}</text>'
-        f'<text x="{x + 8}" y="{y + 37}" fill="#1B2A24">{escape(_cut(box.second))}</text>'
-    )
+def _moves(graph: Graph, layout: Layout, key: str, first: int, last: int) -> bool:
+    """Whether a lane begins or is drawn within some columns."""
+    lane = graph.lanes[key]
+    columns = [layout.column[lane.maker], *(layout.column[use.bar] for use in lane.uses)]
+    return any(first <= column < last for column in columns)

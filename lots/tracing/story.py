@@ -1,12 +1,22 @@
 """A lot's story: what is behind it, where it went, and how much is accounted for."""
 
+from collections.abc import Iterable
 from dataclasses import dataclass, field
 from datetime import datetime
 from typing import Any
 
-from lots.models import DrawRole, Lot, LotState, Reading, Step, StepKind, Stock
+from lots.models import (
+    DrawRole,
+    Hold,
+    Lot,
+    LotState,
+    Reading,
+    Step,
+    StepKind,
+    Stock,
+)
 
-from .cone import Cone, back, forward
+from .cone import Cone, Link, back, forward
 
 
 @dataclass(frozen=True)
@@ -51,6 +61,8 @@ class Story:
     people: list[str]
     instruments: list[str]
     bounds: list[Step] = field(default_factory=list)
+    breaks: list[Step] = field(default_factory=list)
+    held: frozenset[int] = frozenset()
 
 
 def tell(lot: Lot, follow: str = "all") -> Story:
@@ -67,11 +79,11 @@ def tell(lot: Lot, follow: str = "all") -> Story:
     lots = {
         one.pk: one
         for one in Lot.objects.filter(pk__in=behind.lots | ahead.lots | {lot.pk}).select_related(
-            "item", "made_by__partner", "printed_code"
+            "item", "made_by__partner", "printed_code", "put_in"
         )
     }
     made_ahead = Lot.objects.filter(made_by__in=ahead.steps).select_related(
-        "item", "made_by__partner", "printed_code"
+        "item", "made_by__partner", "printed_code", "put_in"
     )
     lots |= {one.pk: one for one in made_ahead}
     back_steps = [steps[pk] for pk in behind.steps if pk in steps]
@@ -87,8 +99,37 @@ def tell(lot: Lot, follow: str = "all") -> Story:
         woods=_names(step.place for step in back_steps if step.kind == StepKind.COLLECTION),
         people=_names(step.recorded_by for step in back_steps),
         instruments=_instruments(behind),
-        bounds=_bounds(back_steps),
+        bounds=(bounds := _bounds(back_steps)),
+        breaks=_breaks(steps, behind.links + ahead.links, lots, bounds),
+        held=frozenset(
+            Hold.objects.filter(lot__in=lots, ended_at=None).values_list("lot", flat=True)
+        ),
     )
+
+
+def _breaks(
+    steps: dict[int, Step], links: Iterable[Link], lots: dict[int, Lot], bounds: list[Step]
+) -> list[Step]:
+    """Return the clean breaks that bound a chain: before, between and next after a vessel's use."""
+    used: dict[int, list[datetime]] = {}
+    for step in steps.values():
+        if step.place_id:
+            used.setdefault(step.place_id, []).append(step.started_at)
+    for link in links:
+        vessel = lots[link.lot].put_in_id
+        if vessel:
+            times = (steps[pk].started_at for pk in (link.from_step, link.step) if pk in steps)
+            used.setdefault(vessel, []).extend(times)
+    rows = Step.objects.filter(kind=StepKind.CLEANING, place__in=used, voided_at=None)
+    found = {step.pk: step for step in bounds}
+    ended: set[int] = set()
+    for step in rows.order_by("started_at", "pk").select_related("place"):
+        times = used.get(step.place_id or 0)
+        if times and step.started_at >= min(times) and step.place_id not in ended:
+            found[step.pk] = step
+            if step.started_at > max(times):
+                ended.add(step.place_id or 0)
+    return sorted(found.values(), key=lambda step: (step.started_at, step.pk))
 
 
 def _names(things: Any) -> list[str]:

@@ -3,7 +3,7 @@
 from django.contrib.auth import views as auth
 from django.urls import path
 
-from .views import browse, decide, packet, record, registers
+from .views import browse, decide, packet, record, registers, trace
 
 urlpatterns = [
     path("", browse.home, name="home"),
@@ -13,7 +13,8 @@ urlpatterns = [
     path("password/done/", auth.PasswordChangeDoneView.as_view(), name="password_change_done"),
     path("f/<slug:slug>/", browse.today, name="today"),
     path("f/<slug:slug>/lots/", browse.lots, name="lots"),
-    path("f/<slug:slug>/lots/<uuid:uuid>/", browse.lot, name="lot"),
+    path("f/<slug:slug>/lots/<uuid:uuid>/", trace.lot, name="lot"),
+    path("f/<slug:slug>/lots/<uuid:uuid>/chain/", trace.chain, name="chain"),
     path("f/<slug:slug>/lots/<uuid:uuid>/hold/", decide.hold, name="hold"),
     path("f/<slug:slug>/lots/<uuid:uuid>/amount/", decide.correct_amount, name="amount"),
     path("f/<slug:slug>/lots/<uuid:uuid>/release/", decide.release, name="release"),
@@ -28,7 +29,7 @@ urlpatterns = [
     path("f/<slug:slug>/unposted/<uuid:uuid>/", decide.settle, name="settle"),
     path("f/<slug:slug>/registers/<slug:name>/", registers.register, name="register"),
     path("f/<slug:slug>/vessels/", browse.vessels, name="vessels"),
-    path("f/<slug:slug>/trace/", browse.trace, name="trace"),
+    path("f/<slug:slug>/trace/", trace.trace, name="trace"),
     path("f/<slug:slug>/packets/", packet.packets, name="packets"),
     path("f/<slug:slug>/people/", decide.people, name="people"),
     path("f/<slug:slug>/people/<uuid:uuid>/", decide.person, name="person"),

@@ -1,25 +1,20 @@
-"""Looking: today, lots, vessels, trace, rules and the journal."""
-
-from uuid import UUID
+"""Looking: today, lots, vessels, rules and the journal."""
 
 from django.contrib.auth.decorators import login_required
 from django.http import HttpRequest, HttpResponse
 from django.shortcuts import redirect, render
-from django.utils.safestring import mark_safe
 from django_tables2 import RequestConfig
 
-from lots.documents import picture
 from lots.models import Hold, JournalEntry, Lot, Membership, Place, Step
-from lots.recording import decisions
 from lots.rules import rule_set
 from lots.rules.regulators import REGULATORS
 from lots.rules.roles import Action
-from lots.tracing import find, story
+from lots.tracing import find
 
-from ..access import allow, facility_of, get_lot, public
+from ..access import allow, facility_of, public
 from ..screens import FORMS
 from ..tables import JournalTable, LotTable
-from ..words import amount_words, lot_sentence
+from ..words import amount_words
 
 
 @public
@@ -65,70 +60,6 @@ def lots(request: HttpRequest, slug: str) -> HttpResponse:
     RequestConfig(request, paginate={"per_page": 25}).configure(table)
     context = {"table": table, "title": "Lots", "q": words, "state": state}
     return render(request, "lots/lots.html", context)
-
-
-QUESTIONS = {
-    "composition": "What is in it",
-    "with-aids": "What is in it, with aids, packaging and cleaning agents",
-    "all": "What could have touched it, residue included",
-}
-
-
-@allow(Action.VIEW)
-def lot(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
-    """Show one lot: its story, checks, holds, and where it came from and went."""
-    found = get_lot(request, uuid)
-    question = request.GET.get("question", "with-aids")
-    if question not in QUESTIONS:
-        question = "with-aids"
-    told = story.tell(found, question)
-    context = {
-        "lot": found,
-        "title": found.code,
-        "sentence": lot_sentence(told),
-        "story": told,
-        "questions": QUESTIONS.items(),
-        "question": question,
-        "picture": mark_safe(picture.svg(told)),  # noqa: S308 - escaped where it is made
-        "back": _rows(told, told.back.links),
-        "ahead": _rows(told, told.forward.links),
-        "checks": found.checks.select_related("reading"),
-        "readings": found.readings.select_related("instrument"),
-        "holds": found.holds.select_related("placed_by", "ended_by").prefetch_related("actions"),
-        "stock": [(name, amount_words(found, n)) for name, n in told.accounting.in_stock.items()],
-        "remaining": amount_words(found, found.remaining),
-        "shown": decisions.shown_hash(found),
-        "descendants": decisions.descendants_in_stock(found),
-    }
-    return render(request, "lots/lot.html", context)
-
-
-def _rows(told: story.Story, links: tuple) -> list[dict[str, object]]:
-    rows = []
-    for link in sorted(links, key=lambda link: told.steps[link.step].started_at):
-        one = told.lots[link.lot]
-        rows.append(
-            {
-                "lot": one,
-                "step": told.steps[link.step],
-                "role": link.role,
-                "amount": amount_words(one, link.quantity),
-            }
-        )
-    return rows
-
-
-@allow(Action.TRACE)
-def trace(request: HttpRequest, slug: str) -> HttpResponse:
-    """Take any code and lead to its lot, or to the nearest ones."""
-    facility = facility_of(request)
-    words = request.GET.get("q", "").strip()
-    found = list(find.lots_by_code(facility, words)[:50]) if words else []
-    if len(found) == 1:
-        return redirect("lot", slug, found[0].uuid)
-    near = find.nearest(facility, words) if words and not found else []
-    context = {"title": "Trace", "q": words, "found": found, "near": near}
-    return render(request, "lots/trace.html", context)
 
 
 @allow(Action.VIEW)

@@ -94,6 +94,16 @@ function showHelps(within = document) {
   }
 }
 
+/* ---- a wide picture opens where the lot asked for stands ---- */
+
+function showAsked(region) {
+  const box = document.getElementById(region.dataset.show)?.getBoundingClientRect();
+  if (!box) return;
+  const frame = region.getBoundingClientRect();
+  region.scrollLeft += box.left + box.width / 2 - frame.left - frame.width / 2;
+  region.scrollTop += box.top + box.height / 2 - frame.top - frame.height / 2;
+}
+
 /* ---- drafts: <form data-draft="client"> names the hidden input that carries the client id ---- */
 
 const LEAVE_OUT = new Set(["password", "file"]);
@@ -213,6 +223,7 @@ function settleSent(forms) {
 function start() {
   showHelps();
   document.querySelector("[data-focus]")?.focus();
+  all("[data-show]").forEach(showAsked);
   const forms = all("form[data-draft]");
   attempt(() => settleSent(forms));
   attempt(() => {
