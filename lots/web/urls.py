@@ -28,6 +28,7 @@ urlpatterns = [
     path("f/<slug:slug>/steps/<uuid:uuid>/<slug:act>/", record.running, name="running"),
     path("f/<slug:slug>/unposted/<uuid:uuid>/", decide.settle, name="settle"),
     path("f/<slug:slug>/registers/<slug:name>/", registers.register, name="register"),
+    path("f/<slug:slug>/registers/<slug:name>/<uuid:uuid>/", registers.change, name="change"),
     path("f/<slug:slug>/vessels/", browse.vessels, name="vessels"),
     path("f/<slug:slug>/trace/", trace.trace, name="trace"),
     path("f/<slug:slug>/packets/", packet.packets, name="packets"),

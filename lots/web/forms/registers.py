@@ -11,20 +11,39 @@ from lots.recording import setup
 from lots.recording.context import Context
 
 
-class PlaceForm(forms.Form):
+class RegisterForm(forms.Form):
+    """A row of a register: added, or changed; only a row that stands can be put out of use."""
+
+    def __init__(self, *args: Any, changing: bool = False, **kwargs: Any) -> None:
+        super().__init__(*args, **kwargs)
+        if not changing:
+            self.fields.pop("active", None)
+
+    def values(self) -> dict[str, Any]:
+        """Return what is kept of the row."""
+        return dict(self.cleaned_data)
+
+    @classmethod
+    def initial_of(cls, row: Any) -> dict[str, Any]:
+        """Return what a row's form shows first."""
+        return {name: getattr(row, name, None) for name in cls.base_fields}
+
+
+class PlaceForm(RegisterForm):
     """A woods section, room or vessel."""
 
     name = forms.CharField(max_length=80)
     kind = forms.ChoiceField(choices=PlaceKind.choices)
     material = forms.CharField(max_length=80, required=False)
     food_grade_statement = forms.CharField(max_length=160, required=False)
+    active = forms.BooleanField(label="In use", required=False, initial=True)
 
     def record(self, context: Context) -> Place:
         """Register it."""
-        return setup.add_place(context, **self.cleaned_data)
+        return setup.add_place(context, **self.values())
 
 
-class ItemForm(forms.Form):
+class ItemForm(RegisterForm):
     """Something kept in lots; a packed product has a size and a label grade."""
 
     name = forms.CharField(max_length=120)
@@ -38,6 +57,7 @@ class ItemForm(forms.Form):
     label_grade = forms.CharField(label="Grade on the label", max_length=40, required=False)
     label_version = forms.CharField(max_length=40, required=False)
     gtin = forms.CharField(label="GTIN", max_length=14, required=False)
+    active = forms.BooleanField(label="In use", required=False, initial=True)
 
     def clean_gtin(self) -> str:
         """Refuse a GTIN whose check digit is wrong."""
@@ -54,17 +74,26 @@ class ItemForm(forms.Form):
             self.add_error("size_value", "Enter the product's size and its unit.")
         return data
 
+    def values(self) -> dict[str, Any]:
+        """Return the item's fields: liquids by weight, products by the piece."""
+        data = dict(self.cleaned_data)
+        counted = data.pop("counted") and data["kind"] not in LIQUIDS
+        pieces = counted or data["kind"] == ItemKind.PACKED
+        data["unit"] = Unit.PIECE if pieces else Unit.MILLIGRAM
+        data["size_value"] = str(data["size_value"] or "")
+        return data
+
+    @classmethod
+    def initial_of(cls, row: Item) -> dict[str, Any]:
+        """Return what an item's form shows first."""
+        return {**super().initial_of(row), "counted": row.unit == Unit.PIECE}
+
     def record(self, context: Context) -> Item:
         """Register it."""
-        data = dict(self.cleaned_data)
-        pieces = data.pop("counted") and data["kind"] not in LIQUIDS
-        pieces = pieces or data["kind"] == ItemKind.PACKED
-        size = data.pop("size_value")
-        unit = Unit.PIECE if pieces else Unit.MILLIGRAM
-        return setup.add_item(context, unit=unit, size_value=str(size or ""), **data)
+        return setup.add_item(context, **self.values())
 
 
-class PartnerForm(forms.Form):
+class PartnerForm(RegisterForm):
     """A supplier, customer, carrier or brand owner."""
 
     name = forms.CharField(max_length=120)
@@ -75,4 +104,4 @@ class PartnerForm(forms.Form):
 
     def record(self, context: Context) -> Partner:
         """Register it."""
-        return setup.add_partner(context, **self.cleaned_data)
+        return setup.add_partner(context, **self.values())
