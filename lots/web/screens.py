@@ -2,7 +2,7 @@
 
 from lots.models import StepKind
 
-from .forms import boil, container_fill, handling, sap, syrup, whole_boil
+from .forms import boil, container_fill, goods_out, receiving, sap, syrup, upkeep, whole_boil
 from .forms.base import RecordForm
 
 SCREENS: dict[str, type[RecordForm]] = {
@@ -12,21 +12,21 @@ SCREENS: dict[str, type[RecordForm]] = {
     StepKind.FILTRATION.value: syrup.FiltrationForm,
     StepKind.DRUM_FILL.value: syrup.DrumFillForm,
     StepKind.CONTAINER_FILL.value: container_fill.ContainerFillForm,
-    StepKind.SALE.value: syrup.SaleForm,
-    StepKind.RECEIVING.value: syrup.ReceivingForm,
-    StepKind.CLEANING.value: syrup.CleaningForm,
-    StepKind.GRADE_READING.value: handling.GradeForm,
-    StepKind.BLEND.value: handling.BlendForm,
-    StepKind.TRANSFER.value: handling.TransferForm,
-    StepKind.REHEAT.value: handling.ReheatForm,
-    StepKind.MOVE.value: handling.MoveForm,
-    StepKind.SPLIT.value: handling.SplitForm,
-    StepKind.REMOVAL.value: handling.RemovalForm,
-    StepKind.REWORK.value: handling.ReworkForm,
-    StepKind.ADJUSTMENT.value: handling.CountForm,
-    StepKind.CUSTOMER_RETURN.value: handling.CustomerReturnForm,
-    StepKind.SUPPLIER_RETURN.value: handling.SupplierReturnForm,
-    StepKind.OPENING_STOCK.value: handling.OpeningStockForm,
+    StepKind.SALE.value: goods_out.SaleForm,
+    StepKind.RECEIVING.value: receiving.ReceivingForm,
+    StepKind.CLEANING.value: upkeep.CleaningForm,
+    StepKind.GRADE_READING.value: syrup.GradeForm,
+    StepKind.BLEND.value: syrup.BlendForm,
+    StepKind.TRANSFER.value: syrup.TransferForm,
+    StepKind.REHEAT.value: syrup.ReheatForm,
+    StepKind.MOVE.value: upkeep.MoveForm,
+    StepKind.SPLIT.value: upkeep.SplitForm,
+    StepKind.REMOVAL.value: goods_out.RemovalForm,
+    StepKind.REWORK.value: upkeep.ReworkForm,
+    StepKind.ADJUSTMENT.value: upkeep.CountForm,
+    StepKind.CUSTOMER_RETURN.value: goods_out.CustomerReturnForm,
+    StepKind.SUPPLIER_RETURN.value: receiving.SupplierReturnForm,
+    StepKind.OPENING_STOCK.value: receiving.OpeningStockForm,
 }
 # A second screen of a kind: a step that runs, opened or recorded whole; what is done inside a
 # running one is below.

@@ -84,11 +84,15 @@ class RecordForm(forms.Form):
         """Return the groups a page shows: the numbers first, the rest folded under "More"."""
         grouped = {name for _, names, _ in self.groups for name in names}
         plain = [name for name in self.fields if name not in grouped and name != "client_id"]
-        found: list[Group] = [("", [name for name in plain if name not in self.folded], False)]
+        found: list[Group] = [("", [name for name in plain if not self.hides(name)], False)]
         for legend, names, folded in self.groups:
             found.append((legend, [name for name in names if name in self.fields], folded))
-        rest = [name for name in plain if name in self.folded]
+        rest = [name for name in plain if self.hides(name)]
         return [group for group in [*found, ("More", rest, True)] if group[1]]
+
+    def hides(self, name: str) -> bool:
+        """Whether a field stands under "More"."""
+        return name in self.folded
 
     def clean(self) -> dict[str, Any]:
         """Refuse what no paper can hold, an hour that did not exist, and pieces of a liquid."""
@@ -116,6 +120,8 @@ class RecordForm(forms.Form):
             return
         if item.unit == Unit.PIECE and typed.unit != "pieces":
             self.add_error(amount, f"{item.name} is counted: enter pieces, not {typed.unit}.")
+        elif item.unit == Unit.PIECE and typed.value != int(typed.value):
+            self.add_error(amount, "Count whole pieces.")
         if item.unit != Unit.PIECE and typed.unit == "pieces":
             self.add_error(amount, f"{item.name} is kept by weight: choose a weight or volume.")
 

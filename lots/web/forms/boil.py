@@ -12,7 +12,8 @@ from lots.recording.context import Context
 from . import fields
 from .aids import AidFields
 from .base import RecordForm
-from .sap import TANKS, places, the_item
+from .choices import TANKS, places, the_item
+from .sources import DIFFERENCE, GaugeFields
 
 EVAPORATOR_CAUTION = (
     "Syrup at the draw-off burns at once and sticks. Gloves, sleeves, and nobody behind you."
@@ -55,7 +56,7 @@ class BoilForm(RecordForm):
         )
 
 
-class FeedForm(AidFields):
+class FeedForm(AidFields, GaugeFields):
     """Feeding a running boil, its defoamer included."""
 
     title = "Feed"
@@ -87,7 +88,8 @@ class FeedForm(AidFields):
         data = self.cleaned_data
         sources: list[Source] = []
         if data["source"]:
-            sources.append(FromVessel(data["source"], data["taken"], data["emptied"]))
+            asked = (data["source"], data["taken"], data["emptied"], data[DIFFERENCE])
+            sources.append(FromVessel(*asked))
         sources += self.aid_sources()
         return boil.feed_boil(context, boil=step, at=self.moment, sources=sources)
 

@@ -8,8 +8,8 @@ from lots.recording.context import Context
 
 from . import fields
 from .base import RecordForm
-from .sap import items, places
-from .syrup import HOT_CAUTION, STORES, SourceFields
+from .choices import HOT_CAUTION, STORES, items, places
+from .sources import SourceFields
 
 
 class ContainerFillForm(fields.DensityFields, SourceFields):

@@ -1,40 +1,18 @@
 """Forms of the sap side: collection and concentration."""
 
-from typing import Any
-
 from django import forms
 
-from lots.models import Facility, Item, ItemKind, Place, PlaceKind, Step
+from lots.models import Facility, ItemKind, PlaceKind, Step
 from lots.recording import sap
 from lots.recording._sources import FromVessel
 from lots.recording.context import Context
-from lots.recording.errors import RecordingError
 
 from . import fields
 from .base import LocalDateTimeField, RecordForm
+from .choices import places, the_item
+from .sources import DIFFERENCE, GaugeFields
 
 PRESSURE_CAUTION = "RO pumps run at pressure that injects water under skin. Stop before opening."
-
-
-def places(facility: Facility, *kinds: str) -> Any:
-    """Return the active places of some kinds."""
-    return Place.objects.filter(facility=facility, kind__in=kinds, active=True).order_by("name")
-
-
-def items(facility: Facility, kind: str) -> Any:
-    """Return the items of one kind."""
-    return Item.objects.filter(facility=facility, kind=kind, active=True).order_by("name")
-
-
-def the_item(facility: Facility, kind: str) -> Item:
-    """Return the facility's item of a kind."""
-    found = items(facility, kind).first()
-    if found is None:
-        raise RecordingError(f"Register an item of the kind {kind} under Materials first.")
-    return found
-
-
-TANKS = (PlaceKind.TANK, PlaceKind.BATCH_TANK, PlaceKind.CANNER, PlaceKind.TOTE, PlaceKind.DRUM)
 
 
 class CollectionForm(fields.DensityFields, RecordForm):
@@ -75,7 +53,7 @@ class CollectionForm(fields.DensityFields, RecordForm):
         )
 
 
-class ConcentrationForm(fields.DensityFields, RecordForm):
+class ConcentrationForm(fields.DensityFields, GaugeFields):
     """One RO run."""
 
     title = "Concentrate"
@@ -106,7 +84,7 @@ class ConcentrationForm(fields.DensityFields, RecordForm):
     def record(self, context: Context) -> Step:
         """Record the run."""
         data = self.cleaned_data
-        source = FromVessel(data["source"], data["taken"], data["emptied"])
+        source = FromVessel(data["source"], data["taken"], data["emptied"], data[DIFFERENCE])
         return sap.record_concentration(
             context,
             at=self.moment,

@@ -1,46 +1,34 @@
-"""Forms between the pan and the sale: filter, drum, fill, sale, and what comes in."""
+"""Forms of syrup between the pan and the jar: filtered, blended, moved, drummed, graded."""
 
 from typing import Any
 
 from django import forms
 
-from lots.models import Facility, ItemKind, Partner, PartnerKind, Place, PlaceKind, Step, StepKind
-from lots.recording import goods_out, receiving, syrup, upkeep
-from lots.recording._sources import FromLot, FromVessel, Source
+from lots.models import Facility, ItemKind, PlaceKind, ReadingKind, Step, StepKind
+from lots.recording import syrup
+from lots.recording._sources import FromVessel, Source
 from lots.recording.context import Context
-from lots.recording.measures import NOT_MEASURED
+from lots.recording.measures import Observation, Typed, celsius
 
 from . import fields
+from .aids import AidFields
 from .base import RecordForm
-from .sap import TANKS, items, places, the_item
+from .choices import HOT_CAUTION, STOCKED, TANKS, any_lot, places, the_item
+from .sources import DIFFERENCE, GaugeFields, SourceFields
 
-HOT_CAUTION = "Filtering and filling heat burns. Face the outlet, wear gloves and sleeves."
-STORES = (PlaceKind.ROOM,)
-LINES = range(1, 7)  # lots of a sale, drums of a filling: more are a second record
-
-
-class SourceFields(RecordForm):
-    """Where the syrup comes from: one vessel, all of it or an amount."""
-
-    emptied = forms.BooleanField(label="The source is empty", required=False)
-
-    def build(self, facility: Facility) -> None:
-        """Offer the vessels that hold something."""
-        held = places(facility, *TANKS).filter(stock__isnull=False).distinct()
-        self.fields["source"] = forms.ModelChoiceField(held, label="From vessel")
-        self.fields["taken"] = fields.volume(facility, "Amount taken (empty: all)")
-
-    def sources(self) -> list[Source]:
-        """Return what was drawn."""
-        data = self.cleaned_data
-        return [FromVessel(data["source"], data["taken"], data["emptied"])]
+LINES = range(1, 7)  # drums of a filling: more are a second record
 
 
-class FiltrationForm(fields.DensityFields, SourceFields):
+class FiltrationForm(fields.DensityFields, AidFields, SourceFields):
     """A press, flat or cone filter run."""
 
     title = "Filter"
     caution = HOT_CAUTION
+    aids = (
+        ("aid", ItemKind.FILTER_AID, "Filter aid", fields.MASSES),
+        ("paper", ItemKind.FILTER_PAPER, "Filter paper", ("pieces", *fields.MASSES)),
+    )
+    rows = (*SourceFields.rows, ("aid", "aid_amount"), ("paper", "paper_amount"))
     filter_kind = forms.ChoiceField(
         label="Filter", choices=[(one, one) for one in ("press", "flat", "cone", "not filtered")]
     )
@@ -54,31 +42,26 @@ class FiltrationForm(fields.DensityFields, SourceFields):
         """Offer vessels and aids."""
         super().build(facility)
         self.fields["into"] = forms.ModelChoiceField(places(facility, *TANKS))
-        self.fields["aid"] = fields.LotChoice(
-            fields.lots_in_stock(facility, ItemKind.FILTER_AID), required=False, label="Filter aid"
-        )
-        self.fields["aid_amount"] = fields.MeasureField(fields.MASSES, "Filter aid used")
+        self.add_aids(facility)
         self.fields["sample_temperature"] = fields.temperature(facility, "Sample temperature")
+        self.fields["temperature"] = fields.temperature(facility, "Syrup temperature")
         self.fields["pressure"] = fields.MeasureField(fields.PRESSURES, "Highest pressure")
-        self.order_fields(("at", "source", "taken", "emptied", "filter_kind", "into", "aid"))
+        self.order_fields(
+            (
+                "at", "source", "taken", "emptied", "filter_kind", "into", "temperature", "aid",
+                "aid_amount", "paper", "paper_amount", "pressure", "clarity", "brix",
+            )
+        )  # fmt: skip
 
     def sources(self) -> list[Source]:
-        """Return the syrup and the filter aid."""
-        found = super().sources()
-        if self.cleaned_data.get("aid"):
-            amount = self.cleaned_data["aid_amount"]
-            role = "aid"
-            found.append(FromLot(self.cleaned_data["aid"], amount, role))  # type: ignore[arg-type]
-        return found
+        """Return the syrup, the filter aid and the papers."""
+        return [*super().sources(), *self.aid_sources()]
 
     def clean(self) -> dict[str, Any]:
-        """Ask why syrup was not filtered, and how much aid went in."""
+        """Ask why syrup was not filtered."""
         cleaned = super().clean()
         if cleaned.get("filter_kind") == "not filtered" and not cleaned.get("reason"):
             self.add_error("reason", "Say why it was not filtered.")
-        amount = cleaned.get("aid_amount") or NOT_MEASURED
-        if cleaned.get("aid") and amount.value is None:
-            self.add_error("aid_amount", "Enter how much filter aid went in.")
         return cleaned
 
     def record(self, context: Context) -> Step:
@@ -92,6 +75,7 @@ class FiltrationForm(fields.DensityFields, SourceFields):
             into=data["into"],
             item=the_item(self.facility, ItemKind.SYRUP),
             brix=self.density(),
+            seen=temperature_seen(data["temperature"]),
             detail={
                 "clarity": data["clarity"],
                 "filter": data["filter_kind"],
@@ -99,6 +83,15 @@ class FiltrationForm(fields.DensityFields, SourceFields):
                 "reason": data["reason"],
             },
         )
+
+
+def temperature_seen(typed: Typed) -> list[Observation]:
+    """Return a temperature as typed beside its °C, where one was typed."""
+    degrees = celsius(typed)
+    if degrees is None:
+        return []
+    kind = ReadingKind.TEMPERATURE
+    return [Observation(kind, typed.text, typed.unit, f"{degrees:.4f}", "°C")]
 
 
 class DrumFillForm(fields.DensityFields, SourceFields):
@@ -152,132 +145,111 @@ class DrumFillForm(fields.DensityFields, SourceFields):
         )
 
 
-class SaleForm(RecordForm):
-    """Goods out."""
+class MixtureForm(fields.DensityFields, GaugeFields):
+    """A blend, transfer or re-heat: up to three vessels into one."""
 
-    title = "Sale"
-    document = forms.CharField(label="Invoice or slip", required=False, max_length=80)
-    address = forms.CharField(label="Delivered to", required=False, max_length=200)
-    folded = (
-        "address", "carrier",
-        *(f"{name}_{number}" for number in LINES[1:] for name in ("lot", "quantity")),
-    )  # fmt: skip
+    caution = HOT_CAUTION
+    kind = StepKind.BLEND
+    sources_offered = 3
+    rows = tuple((f"source_{number}", f"taken_{number}") for number in range(1, 4))
+    note = forms.CharField(required=False, widget=forms.Textarea(attrs={"rows": 2}))
+    folded = ("device", "sample_temperature", "note")
 
     def build(self, facility: Facility) -> None:
-        """Offer released goods and customers, a line for each lot."""
-        goods = fields.lots_in_stock(facility, ItemKind.PACKED, ItemKind.SYRUP, released=True)
-        for number in LINES:
-            label = "" if number == 1 else f" {number}"
-            self.fields[f"lot_{number}"] = fields.LotChoice(
-                goods, label=f"Lot{label}", required=number == 1
+        """Offer the vessels."""
+        for number in range(1, self.sources_offered + 1):
+            self.fields[f"source_{number}"] = forms.ModelChoiceField(
+                places(facility, *TANKS),
+                label=f"From vessel {number}",
+                required=number == 1,
             )
-            self.fields[f"quantity_{number}"] = fields.MeasureField(
-                ["pieces", *fields.MASSES], f"Quantity{label}"
-            )
-        partners = Partner.objects.filter(facility=facility).order_by("name")
-        self.fields["customer"] = forms.ModelChoiceField(
-            partners.filter(kind=PartnerKind.CUSTOMER),
-            required=False,
-            empty_label="Over the counter",
-        )
-        self.fields["carrier"] = forms.ModelChoiceField(
-            partners.filter(kind=PartnerKind.CARRIER), required=False
-        )
-        self.order_fields(("at", "lot_1", "quantity_1", "customer", "document"))
+            self.fields[f"taken_{number}"] = fields.volume(facility, f"Taken {number} (empty: all)")
+        self.fields["into"] = forms.ModelChoiceField(places(facility, *TANKS))
+        self.fields["sample_temperature"] = fields.temperature(facility, "Sample temperature")
+
+    def sources(self) -> list[Source]:
+        """Return what was drawn."""
+        data = self.cleaned_data
+        numbers = range(1, self.sources_offered + 1)
+        return [
+            FromVessel(data[f"source_{n}"], data[f"taken_{n}"], accept_difference=data[DIFFERENCE])
+            for n in numbers
+            if data.get(f"source_{n}")
+        ]
 
     def record(self, context: Context) -> Step:
-        """Record the sale: all of its lines, or none."""
+        """Record the mixture."""
         data = self.cleaned_data
-        return goods_out.record_sale(
+        return syrup.record_mixture(
+            context,
+            kind=self.kind,
+            at=self.moment,
+            sources=self.sources(),
+            into=data["into"],
+            item=the_item(self.facility, ItemKind.SYRUP),
+            brix=self.density(),
+            note=data["note"],
+        )
+
+
+class BlendForm(MixtureForm):
+    """Several vessels into one."""
+
+    title = "Blend"
+
+
+class TransferForm(MixtureForm):
+    """One vessel into another, the canner included."""
+
+    title = "Transfer"
+    kind = StepKind.TRANSFER
+    sources_offered = 1
+
+
+class ReheatForm(MixtureForm):
+    """Syrup heated again before filling; its earlier grade readings support no label."""
+
+    title = "Re-heat"
+    kind = StepKind.REHEAT
+    sources_offered = 1
+
+
+class GradeForm(fields.DensityFields, RecordForm):
+    """A grading of one lot."""
+
+    title = "Grade reading"
+    transmittance = fields.MeasureField(["%Tc"], "Colour at 560 nm, glycerol 100")
+    flavour = forms.CharField(required=False, max_length=40)
+    clarity = forms.ChoiceField(
+        choices=[("", "not judged"), ("clear", "clear"), ("hazy", "hazy"), ("cloudy", "cloudy")],
+        required=False,
+    )
+    defect = forms.CharField(label="Defect", required=False, max_length=40)
+    intensity = forms.ChoiceField(
+        choices=[("", "none"), ("trace", "trace"), ("slight", "slight"), ("strong", "strong")],
+        required=False,
+    )
+    grader = forms.CharField(required=False, max_length=80)
+    folded = ("device", "sample_temperature", "defect", "intensity")
+
+    def build(self, facility: Facility) -> None:
+        """Offer syrup and packed lots."""
+        self.fields["lot"] = any_lot(facility, *STOCKED)
+        self.fields["sample_temperature"] = fields.temperature(facility, "Sample temperature")
+        self.order_fields(("at", "lot", "transmittance", "brix", "flavour", "clarity", "grader"))
+
+    def record(self, context: Context) -> Step:
+        """Record the grading."""
+        data = self.cleaned_data
+        found = [(data["defect"], data["intensity"] or "trace")] if data["defect"] else []
+        return syrup.record_grade_reading(
             context,
             at=self.moment,
-            sold=[
-                FromLot(data[f"lot_{number}"], data[f"quantity_{number}"])
-                for number in LINES
-                if data.get(f"lot_{number}")
-            ],
-            customer=data["customer"],
-            carrier=data["carrier"],
-            document=data["document"],
-            address=data["address"],
-        )
-
-
-class ReceivingForm(fields.DensityFields, RecordForm):
-    """A delivery of one lot."""
-
-    title = "Receiving"
-    supplier_code = forms.CharField(label="Supplier's lot code", required=False, max_length=60)
-    document = forms.CharField(label="Delivery slip", required=False, max_length=80)
-    packages = forms.CharField(label="Packages", required=False, max_length=80)
-    condition = forms.CharField(label="Condition", required=False, max_length=120)
-    statement = forms.CharField(
-        label="Allergen and food-grade statement", required=False, max_length=200
-    )
-    decision = forms.ChoiceField(choices=[(one, one) for one in receiving.DECISIONS])
-    decision_reason = forms.CharField(label="If not accepted, why", required=False, max_length=200)
-    folded = ("brix", "device", "sample_temperature", "packages", "condition")
-
-    def build(self, facility: Facility) -> None:
-        """Offer suppliers, items and places."""
-        self.fields["supplier"] = forms.ModelChoiceField(
-            Partner.objects.filter(facility=facility, kind=PartnerKind.SUPPLIER).order_by("name")
-        )
-        self.fields["item"] = forms.ModelChoiceField(
-            items(facility, ItemKind.SYRUP)
-            .model.objects.filter(facility=facility, active=True)
-            .exclude(kind__in=[ItemKind.PACKED, ItemKind.CONTENTS])
-            .order_by("name")
-        )
-        units = ["pieces", *fields.ordered(fields.MASSES, facility.mass_unit), *fields.VOLUMES]
-        self.fields["amount"] = fields.MeasureField(units, "Quantity", required=True)
-        self.fields["place"] = forms.ModelChoiceField(
-            Place.objects.filter(facility=facility, active=True)
-            .exclude(kind=PlaceKind.WOODS)
-            .order_by("name")
-        )
-        self.fields["sample_temperature"] = fields.temperature(facility, "Sample temperature")
-        self.order_fields(("at", "supplier", "item", "amount", "supplier_code", "place"))
-
-    def record(self, context: Context) -> Step:
-        """Record the delivery."""
-        data = self.cleaned_data
-        names = (
-            "supplier", "item", "amount", "place", "supplier_code", "decision",
-            "decision_reason", "document", "packages", "condition", "statement",
-        )  # fmt: skip
-        return receiving.record_receiving(
-            context, at=self.moment, brix=self.density(), **{name: data[name] for name in names}
-        )
-
-
-class CleaningForm(RecordForm):
-    """A clean break of a vessel."""
-
-    title = "Cleaning"
-    caution = (
-        "Cleaning chemicals burn skin and lungs. Never mix them; follow the label; rinse until "
-        "nothing of them is left."
-    )
-    break_kind = forms.ChoiceField(
-        label="What was done", choices=[(one, one) for one in upkeep.BREAKS]
-    )
-    strength = forms.CharField(required=False, max_length=60)
-    verified_by = forms.CharField(label="Verified by", required=False, max_length=80)
-
-    def build(self, facility: Facility) -> None:
-        """Offer vessels and agents."""
-        kinds = [kind for kind in PlaceKind if kind not in (PlaceKind.WOODS, PlaceKind.ROOM)]
-        self.fields["vessel"] = forms.ModelChoiceField(places(facility, *kinds))
-        self.fields["agent"] = fields.LotChoice(
-            fields.lots_in_stock(facility, ItemKind.CLEANER), required=False
-        )
-        self.order_fields(("at", "vessel", "break_kind", "agent", "strength"))
-
-    def record(self, context: Context) -> Step:
-        """Record the cleaning."""
-        data = self.cleaned_data
-        names = ("vessel", "break_kind", "agent", "strength", "verified_by")
-        return upkeep.record_cleaning(
-            context, at=self.moment, **{name: data[name] for name in names}
+            lot=data["lot"],
+            transmittance=data["transmittance"],
+            brix=self.density(),
+            flavour=data["flavour"],
+            clarity=data["clarity"],
+            defects=found,
+            grader=data["grader"],
         )

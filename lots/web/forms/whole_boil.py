@@ -17,7 +17,8 @@ from . import fields
 from .aids import AidFields
 from .base import LocalDateTimeField
 from .boil import DEFOAMER, EVAPORATOR_CAUTION, pans_were
-from .sap import TANKS, places, the_item
+from .choices import TANKS, places, the_item
+from .sources import DIFFERENCE, GaugeFields
 
 SOURCES = range(1, 4)
 DRAW_OFFS = range(1, 7)
@@ -26,7 +27,7 @@ LONGEST = timedelta(hours=24)  # an hour without its day says when only within a
 DRAW_OFF_WORDS = "Enter the hour of this draw-off.", "Choose the vessel it went into."
 
 
-class WholeBoilForm(fields.DensityFields, AidFields):
+class WholeBoilForm(fields.DensityFields, AidFields, GaugeFields):
     """From fire lit to fire out: what it drew, its draw-offs, and what stays in the pans."""
 
     title = "Whole boil, afterwards"
@@ -144,11 +145,16 @@ class WholeBoilForm(fields.DensityFields, AidFields):
     def sources(self) -> list[Source]:
         """Return what the boil drew."""
         data = self.cleaned_data
-        tanks = [number for number in SOURCES if data.get(f"source_{number}")]
-        return [
-            *(FromVessel(data[f"source_{n}"], data[f"taken_{n}"]) for n in tanks),
-            *self.aid_sources(),
+        tanks = [
+            FromVessel(
+                data[f"source_{number}"],
+                data[f"taken_{number}"],
+                accept_difference=data[DIFFERENCE],
+            )
+            for number in SOURCES
+            if data.get(f"source_{number}")
         ]
+        return [*tanks, *self.aid_sources()]
 
     def draw_offs(self) -> list[boil.DrawOff]:
         """Return the draw-offs, in the order of their hours."""
