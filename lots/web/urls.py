@@ -3,7 +3,7 @@
 from django.contrib.auth import views as auth
 from django.urls import path
 
-from .views import browse, decide, packet, record, registers, trace
+from .views import browse, decide, packet, record, registers, today, trace
 
 urlpatterns = [
     path("", browse.home, name="home"),
@@ -11,7 +11,7 @@ urlpatterns = [
     path("logout/", auth.LogoutView.as_view(), name="logout"),
     path("password/", auth.PasswordChangeView.as_view(), name="password_change"),
     path("password/done/", auth.PasswordChangeDoneView.as_view(), name="password_change_done"),
-    path("f/<slug:slug>/", browse.today, name="today"),
+    path("f/<slug:slug>/", today.today, name="today"),
     path("f/<slug:slug>/lots/", browse.lots, name="lots"),
     path("f/<slug:slug>/lots/<uuid:uuid>/", trace.lot, name="lot"),
     path("f/<slug:slug>/lots/<uuid:uuid>/chain/", trace.chain, name="chain"),

@@ -5,14 +5,13 @@ from django.http import HttpRequest, HttpResponse
 from django.shortcuts import redirect, render
 from django_tables2 import RequestConfig
 
-from lots.models import Hold, JournalEntry, Lot, Membership, Place, Step
+from lots.models import JournalEntry, Lot, Membership, Place
 from lots.rules import rule_set
 from lots.rules.regulators import REGULATORS
 from lots.rules.roles import Action
 from lots.tracing import find
 
 from ..access import allow, facility_of, public
-from ..screens import FORMS
 from ..tables import JournalTable, LotTable
 from ..words import amount_words
 
@@ -25,24 +24,6 @@ def home(request: HttpRequest) -> HttpResponse:
     if len(members) == 1:
         return redirect("today", members[0].facility.slug)
     return render(request, "lots/home.html", {"members": members, "title": "Facilities"})
-
-
-@allow(Action.VIEW)
-def today(request: HttpRequest, slug: str) -> HttpResponse:
-    """Show what runs, what to record, and what needs someone."""
-    facility = facility_of(request)
-    steps = Step.objects.filter(facility=facility, voided_at=None).select_related("place")
-    context = {
-        "title": "Today",
-        "running": steps.filter(ended_at=None).order_by("started_at"),
-        "latest": steps.order_by("-started_at", "-pk")[:8],
-        "screens": [(kind, form.title) for kind, form in FORMS.items()],
-        "holds": Hold.objects.filter(lot__facility=facility, ended_at=None)
-        .select_related("lot__item")
-        .order_by("placed_at"),
-        "unposted": facility.unposted.filter(settled_at=None).order_by("happened_at"),
-    }
-    return render(request, "lots/today.html", context)
 
 
 @allow(Action.VIEW)

@@ -39,7 +39,7 @@ def record(request: HttpRequest, slug: str, kind: str) -> HttpResponse:
                 return _keep(request, slug, kind, form, error)
             form.refuse(error)
         else:
-            messages.success(request, f"Recorded: {step}.")
+            messages.success(request, f"Recorded: {step.in_words(form.facility.zone)}.")
             return redirect("step", slug, step.uuid)
     return _show(request, form)
 
