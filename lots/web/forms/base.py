@@ -11,11 +11,11 @@ from django.utils import timezone
 
 from lots.models import Draw, Facility, Item, Lot, Step, Unit
 from lots.recording.context import Context
-from lots.recording.errors import RecordingError, WouldRedivide
+from lots.recording.errors import GaugeDifference, RecordingError, WouldRedivide
 
 Group = tuple[str, list[str], bool]
 # What a form sends that is no part of what it says.
-NOT_CONTENT = frozenset({"csrfmiddlewaretoken", "client_id", "redivide", "happened"})
+NOT_CONTENT = frozenset({"csrfmiddlewaretoken", "client_id", "redivide", "happened", "difference"})
 AMOUNT_WORDS = ("amount", "quantity", "counted")
 
 
@@ -62,6 +62,8 @@ class RecordForm(forms.Form):
     instead: tuple[str, str] | None = None
     refused = False
     would_redivide = False
+    within_tolerance = False
+    repeated_hour = False
     client_id = forms.UUIDField(widget=forms.HiddenInput)
     at = LocalDateTimeField(label="When")
 
@@ -102,6 +104,9 @@ class RecordForm(forms.Form):
                 self.add_error(name, "This text holds a broken character; type it again.")
             if isinstance(self.fields.get(name), LocalDateTimeField) and self._missing(value):
                 self.add_error(name, "The clocks went forward over that hour; enter another.")
+            if isinstance(self.fields.get(name), LocalDateTimeField) and self._twice(value):
+                self.repeated_hour = True
+                self.add_error(name, "The clocks went back: that hour came twice. Say which below.")
         for choice, amount in self.rows:
             self._check_unit(cleaned, choice, amount)
         return cleaned
@@ -113,6 +118,14 @@ class RecordForm(forms.Form):
         zone = ZoneInfo(self.facility.zone)
         there = typed.replace(tzinfo=zone).astimezone(ZoneInfo("UTC")).astimezone(zone)
         return there.replace(tzinfo=None) != typed
+
+    def _twice(self, typed: datetime | None) -> bool:
+        """Whether the clock showed that hour twice and the form does not say which."""
+        if typed is None or self.data.get("which_hour") in ("first", "second"):
+            return False
+        zone = ZoneInfo(self.facility.zone)
+        offsets = {typed.replace(tzinfo=zone, fold=fold).utcoffset() for fold in (0, 1)}
+        return len(offsets) == 2 and not self._missing(typed)
 
     def _check_unit(self, cleaned: dict[str, Any], choice: str, amount: str) -> None:
         item, typed = item_of(cleaned.get(choice)), cleaned.get(amount)
@@ -133,7 +146,8 @@ class RecordForm(forms.Form):
     def moment_of(self, name: str) -> datetime:
         """Return a time of the form, in the facility's zone."""
         typed: datetime = self.cleaned_data[name]
-        return typed.replace(tzinfo=ZoneInfo(self.facility.zone))
+        fold = 1 if self.data.get("which_hour") == "second" else 0
+        return typed.replace(tzinfo=ZoneInfo(self.facility.zone), fold=fold)
 
     def client(self) -> tuple[UUID, Any]:
         """Return the form's own id and its content, by which a repeat is told."""
@@ -150,6 +164,7 @@ class RecordForm(forms.Form):
         """Put a refusal beside its field, keeping all that was typed."""
         self.refused = True
         self.would_redivide = isinstance(error, WouldRedivide)
+        self.within_tolerance = isinstance(error, GaugeDifference)
         self.add_error(self.beside(error), error.message)
 
     def beside(self, error: RecordingError) -> str | None:
