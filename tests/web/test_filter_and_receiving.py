@@ -85,17 +85,15 @@ def test_a_slip_in_filtering_is_told_beside_its_field(
     assert words in str(found[field])
 
 
-def test_a_gauge_above_the_book_is_taken_once_its_difference_is_ticked(recorder, house, batch):
+def test_a_gauge_above_the_book_is_taken_once_it_is_confirmed(recorder, house, batch):
     page = url(house, "record", "filtration")
     # The batch tank holds the 8 US gal drawn off; 8.2 lies within the 5 % of the gauge.
     form = filtering(house, batch, **measure("taken", "8.2"))
 
     refused = recorder.post(page, form)
     assert list(errors(refused)) == ["taken"]
-    names = [name for _, shown, folded in refused.context["form"].fieldsets if not folded
-             for name in shown]  # fmt: skip
-    assert "accept_difference" in names
-    recorded = recorder.post(page, {**form, "accept_difference": "on"})
+    assert 'name="difference"' in refused.content.decode()
+    recorded = recorder.post(page, {**form, "difference": "1"})
 
     assert recorded.status_code == 302
     assert Step.objects.get(kind="filtration").adjustments.get().quantity > 0

@@ -13,7 +13,6 @@ from . import fields
 from .aids import AidFields
 from .base import RecordForm
 from .choices import TANKS, places, the_item
-from .sources import DIFFERENCE, GaugeFields
 
 EVAPORATOR_CAUTION = (
     "Syrup at the draw-off burns at once and sticks. Gloves, sleeves, and nobody behind you."
@@ -56,7 +55,7 @@ class BoilForm(RecordForm):
         )
 
 
-class FeedForm(AidFields, GaugeFields):
+class FeedForm(AidFields):
     """Feeding a running boil, its defoamer included."""
 
     title = "Feed"
@@ -88,8 +87,7 @@ class FeedForm(AidFields, GaugeFields):
         data = self.cleaned_data
         sources: list[Source] = []
         if data["source"]:
-            asked = (data["source"], data["taken"], data["emptied"], data[DIFFERENCE])
-            sources.append(FromVessel(*asked))
+            sources.append(FromVessel(data["source"], data["taken"], data["emptied"]))
         sources += self.aid_sources()
         return boil.feed_boil(context, boil=step, at=self.moment, sources=sources)
 

@@ -10,7 +10,6 @@ from lots.recording.context import Context
 from . import fields
 from .base import LocalDateTimeField, RecordForm
 from .choices import places, the_item
-from .sources import DIFFERENCE, GaugeFields
 
 PRESSURE_CAUTION = "RO pumps run at pressure that injects water under skin. Stop before opening."
 
@@ -53,7 +52,7 @@ class CollectionForm(fields.DensityFields, RecordForm):
         )
 
 
-class ConcentrationForm(fields.DensityFields, GaugeFields):
+class ConcentrationForm(fields.DensityFields, RecordForm):
     """One RO run."""
 
     title = "Concentrate"
@@ -84,7 +83,7 @@ class ConcentrationForm(fields.DensityFields, GaugeFields):
     def record(self, context: Context) -> Step:
         """Record the run."""
         data = self.cleaned_data
-        source = FromVessel(data["source"], data["taken"], data["emptied"], data[DIFFERENCE])
+        source = FromVessel(data["source"], data["taken"], data["emptied"])
         return sap.record_concentration(
             context,
             at=self.moment,

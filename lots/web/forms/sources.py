@@ -1,4 +1,4 @@
-"""Where a step takes from: one vessel or several, all or an amount, the gauge against the book."""
+"""Where a step takes from: one vessel or several, all of each or an amount."""
 
 from django import forms
 
@@ -9,22 +9,8 @@ from . import fields
 from .base import RecordForm
 from .choices import TANKS, places
 
-DIFFERENCE = "accept_difference"
 
-
-class GaugeFields(RecordForm):
-    """A form that draws from vessels: a gauge may disagree with the book within its tolerance."""
-
-    accept_difference = forms.BooleanField(
-        label="Record the difference: the gauge is right, not the book", required=False
-    )
-
-    def hides(self, name: str) -> bool:
-        """Fold the difference away until a refusal speaks of it."""
-        return super().hides(name) or (name == DIFFERENCE and not self.refused)
-
-
-class SourceFields(GaugeFields):
+class SourceFields(RecordForm):
     """Where the syrup comes from: up to so many vessels, all of each or an amount.
 
     The first vessel's fields are ``source``, ``taken`` and ``emptied``; the others end in their
@@ -62,12 +48,7 @@ class SourceFields(GaugeFields):
         data = self.cleaned_data
         ends = ["" if number == 1 else f"_{number}" for number in range(1, self.vessels + 1)]
         return [
-            FromVessel(
-                data[f"source{end}"],
-                data[f"taken{end}"],
-                data[f"emptied{end}"],
-                data[DIFFERENCE],
-            )
+            FromVessel(data[f"source{end}"], data[f"taken{end}"], data[f"emptied{end}"])
             for end in ends
             if data.get(f"source{end}")
         ]

@@ -14,7 +14,7 @@ from . import fields
 from .aids import AidFields
 from .base import RecordForm
 from .choices import HOT_CAUTION, STOCKED, TANKS, any_lot, places, the_item
-from .sources import DIFFERENCE, GaugeFields, SourceFields
+from .sources import SourceFields
 
 LINES = range(1, 7)  # drums of a filling: more are a second record
 
@@ -145,7 +145,7 @@ class DrumFillForm(fields.DensityFields, SourceFields):
         )
 
 
-class MixtureForm(fields.DensityFields, GaugeFields):
+class MixtureForm(fields.DensityFields, RecordForm):
     """A blend, transfer or re-heat: up to three vessels into one."""
 
     caution = HOT_CAUTION
@@ -172,7 +172,7 @@ class MixtureForm(fields.DensityFields, GaugeFields):
         data = self.cleaned_data
         numbers = range(1, self.sources_offered + 1)
         return [
-            FromVessel(data[f"source_{n}"], data[f"taken_{n}"], accept_difference=data[DIFFERENCE])
+            FromVessel(data[f"source_{n}"], data[f"taken_{n}"])
             for n in numbers
             if data.get(f"source_{n}")
         ]

@@ -18,7 +18,6 @@ from .aids import AidFields
 from .base import LocalDateTimeField
 from .boil import DEFOAMER, EVAPORATOR_CAUTION, pans_were
 from .choices import TANKS, places, the_item
-from .sources import DIFFERENCE, GaugeFields
 
 SOURCES = range(1, 4)
 DRAW_OFFS = range(1, 7)
@@ -27,7 +26,7 @@ LONGEST = timedelta(hours=24)  # an hour without its day says when only within a
 DRAW_OFF_WORDS = "Enter the hour of this draw-off.", "Choose the vessel it went into."
 
 
-class WholeBoilForm(fields.DensityFields, AidFields, GaugeFields):
+class WholeBoilForm(fields.DensityFields, AidFields):
     """From fire lit to fire out: what it drew, its draw-offs, and what stays in the pans."""
 
     title = "Whole boil, afterwards"
@@ -146,11 +145,7 @@ class WholeBoilForm(fields.DensityFields, AidFields, GaugeFields):
         """Return what the boil drew."""
         data = self.cleaned_data
         tanks = [
-            FromVessel(
-                data[f"source_{number}"],
-                data[f"taken_{number}"],
-                accept_difference=data[DIFFERENCE],
-            )
+            FromVessel(data[f"source_{number}"], data[f"taken_{number}"])
             for number in SOURCES
             if data.get(f"source_{number}")
         ]
