@@ -79,7 +79,8 @@ def make(
         Stock.objects.create(lot=lot, place=place, quantity=quantity or 0)
         if place.is_vessel and item.is_liquid:
             _tell_later_steps(writer, lot, place, moment)
-    for draw in step.draws.filter(ended_at=None, role__in=SHARES).select_related("lot"):
+    drawn = step.draws.filter(ended_at=None, role__in=SHARES).exclude(quantity=0)
+    for draw in drawn.select_related("lot"):
         _inherit(writer, draw.lot, [lot])
     return lot
 
@@ -156,15 +157,18 @@ def take(
     place: Place | None = None,
     rework: bool = False,
     asked: VesselTake | None = None,
+    lingers: bool = False,
 ) -> Taken:
     """Draw from one lot, where it stands; ``quantity`` ``None`` is "not measured".
 
     Refuses a held lot (unless reworked), more than the book holds, a lot of another facility, and
-    a lot made after the act. Goods in several places are drawn place by place.
+    a lot made after the act. Goods in several places are drawn place by place. A lot that
+    ``lingers`` keeps its place at nought: the vessel was not emptied, so later draws carry it over.
     """
     lot = Lot.objects.select_related("item", "made_by__place").get(pk=lot.pk)
     writer.own(lot, place)
-    _refuse(writer, step, lot, role, rework)
+    if quantity != 0:
+        _refuse(writer, step, lot, role, rework)
     amount = quantity or 0
     if lot.remaining is not None and amount > lot.remaining:
         if role not in (DrawRole.AID, DrawRole.PACKAGING, DrawRole.CLEANING):
@@ -178,10 +182,10 @@ def take(
     total: int | None = 0
     for where, part in _places_of(lot, amount, place):
         given = None if quantity is None else part
-        solids = _take_part(writer, step, lot, given, role, where, asked)
+        solids = _take_part(writer, step, lot, given, role, where, asked, lingers)
         total = None if total is None or solids is None else total + solids
         lot.refresh_from_db()
-    if role in SHARES:
+    if role in SHARES and quantity != 0:
         _inherit(writer, lot, step.made_lots.all())
     return Taken(quantity, total)
 
@@ -194,6 +198,7 @@ def _take_part(
     role: DrawRole,
     place: Place | None,
     asked: VesselTake | None,
+    lingers: bool,
 ) -> int | None:
     solids = _solids_share(lot, quantity)
     changes: dict[str, Any] = {"drawn": F("drawn") + (quantity or 0)}
@@ -203,7 +208,7 @@ def _take_part(
         changes["shipped"] = F("shipped") + (quantity or 0)
     Lot.objects.filter(pk=lot.pk).update(**changes)
     row = Stock.objects.filter(lot=lot, place=place).first() if place else None
-    if row is not None and (row.quantity != quantity or lot.made is None):
+    if row is not None and (row.quantity != quantity or lot.made is None or lingers):
         Stock.objects.filter(pk=row.pk).update(quantity=F("quantity") - (quantity or 0))
     elif row is not None:
         row.delete()

@@ -29,7 +29,7 @@ def _washed_between(place: Place, after: datetime, before: datetime) -> bool:
 def of_vessel(writer: Writer, step: Step, vessel: Place) -> None:
     """Draw what an empty vessel last held, unless it was washed since."""
     writer.own(vessel)
-    if _vessels.contents(vessel):
+    if any(row.quantity or row.lot.made is None for row in _vessels.contents(vessel)):
         return
     last = (
         Draw.objects.filter(from_place=vessel, ended_at=None, step__started_at__lte=step.started_at)

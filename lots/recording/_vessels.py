@@ -4,7 +4,7 @@ from collections.abc import Iterable, Sequence
 from datetime import datetime
 from decimal import Decimal
 
-from django.db.models import Q, QuerySet
+from django.db.models import QuerySet
 
 from lots.models import DrawRole, LotState, Place, Stock, VesselTake
 from lots.quantities import rounding
@@ -18,13 +18,10 @@ from .measures import Typed, liquid_mass
 def contents(vessel: Place, at: datetime | None = None) -> list[Stock]:
     """Return what a vessel holds, oldest first, lots of unknown quantity included.
 
-    With a time, lots made only after it are left out.
+    A lot whose share rounded to nought stays among them until the vessel is emptied: rounding
+    never ends a trace. With a time, lots made only after it are left out.
     """
-    rows = (
-        Stock.objects.filter(place=vessel)
-        .filter(Q(quantity__gt=0) | Q(lot__made=None))
-        .exclude(lot__state=LotState.VOID)
-    )
+    rows = Stock.objects.filter(place=vessel).exclude(lot__state=LotState.VOID)
     if at is not None:
         rows = rows.filter(lot__made_at__lte=at)
     return list(rows.select_related("lot__item", "place").order_by("lot__made_at", "lot_id"))
@@ -45,7 +42,7 @@ def answer(writer: Writer, asked: VesselTake, *, again: bool = False) -> _ledger
     booked as a difference.
     """
     held = contents(asked.vessel, asked.at)
-    if not held and not again:
+    if not again and not any(row.quantity or row.lot.made is None for row in held):
         raise NotEnough(f"{asked.vessel.name} is empty by the book.", field="vessel")
     known = [row for row in held if row.lot.made is not None]
     book = sum(row.quantity for row in known)
@@ -74,7 +71,14 @@ def _draw(
     for row, part in zip(known, parts, strict=True):
         role = DrawRole.INGREDIENT if part else DrawRole.CARRY_OVER
         drawn = _ledger.take(
-            writer, asked.step, row.lot, part, role, place=asked.vessel, asked=asked
+            writer,
+            asked.step,
+            row.lot,
+            part,
+            role,
+            place=asked.vessel,
+            asked=asked,
+            lingers=wanted < sum(one.quantity for one in known),
         )
         total += part
         unknown = unknown or drawn.solids is None

@@ -2,8 +2,11 @@
 
 import pytest
 
-from lots.recording import upkeep
+from lots.models import Lot, StepKind, Stock
+from lots.recording import syrup, upkeep
+from lots.recording._sources import FromVessel
 from lots.tracing import cone
+from tests.factories import gallons
 
 pytestmark = [pytest.mark.django_db, pytest.mark.engine]
 
@@ -63,3 +66,33 @@ def test_a_wash_ends_it(house):
     later = house.boil(hours=24)
 
     assert not later.draws.filter(role="residue", lot=syrup).exists()
+
+
+def test_rounding_never_ends_a_trace_while_the_vessel_is_not_emptied(house):
+    """A heel of 1 mg of a lot rounds to nothing, but stays carried over until "emptied"."""
+    first = house.collect("100")
+    tank, other = house.places["Tank 1"], house.places["Tank 2"]
+
+    def pass_on(hours, **source):
+        return syrup.record_mixture(
+            house.context(hours=hours), kind=StepKind.TRANSFER, at=house.at(hours), into=other,
+            sources=[FromVessel(tank, **source)], item=house.items["sap"],
+        )  # fmt: skip
+
+    Stock.objects.filter(lot=first).update(quantity=1)
+    Lot.objects.filter(pk=first.pk).update(made=1, solids_made=0)
+    house.collect("100", hours=1)
+    half = pass_on(2, amount=gallons("60"))
+    more = pass_on(3, amount=gallons("30"))
+    last = pass_on(4)
+    house.collect("100", hours=5)
+    after = pass_on(6)
+
+    roles = [
+        step.draws.filter(lot=first).values_list("role", "quantity").first()
+        for step in (half, more, last, after)
+    ]
+    assert roles[0] == ("ingredient", 1)
+    assert roles[1] == ("carry-over", 0)
+    assert roles[2] == ("carry-over", 0)
+    assert roles[3] is None
