@@ -229,7 +229,7 @@ def _label(frame: Frame, lane: Lane, name: str) -> str:
     again = [
         frame.x[column] + SIDE
         for column in frame.x
-        if max(start, frame.first) < column < end and (column - frame.first) % AGAIN == 0
+        if max(start + 2, frame.first) < column < end and (column - frame.first) % AGAIN == 0
     ]
     if not frame.holds(start):
         again.insert(0, frame.x[frame.first] - frame.pitch + SIDE)

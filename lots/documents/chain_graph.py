@@ -255,7 +255,7 @@ def _add_breaks(graph: Graph, story: Story, zone: ZoneInfo, grouped: bool) -> No
     ranks: dict[str, list[float]] = defaultdict(list)
     for lane in graph.lanes.values():
         ranks[lane.band].append(lane.rank)
-    for step in story.breaks:
+    for step in story.bounded.breaks:
         place = step.place
         if place is None:
             continue

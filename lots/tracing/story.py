@@ -1,9 +1,11 @@
 """A lot's story: what is behind it, where it went, and how much is accounted for."""
 
+from collections import Counter
 from collections.abc import Iterable
 from dataclasses import dataclass, field
-from datetime import datetime
 from typing import Any
+
+from django.db.models import Count, Max
 
 from lots.models import (
     DrawRole,
@@ -14,9 +16,14 @@ from lots.models import (
     Step,
     StepKind,
     Stock,
+    UnpostedEntry,
 )
 
-from .cone import Cone, Link, back, forward
+from . import bounds
+from .cone import Cone, back, forward
+
+COUNTER = "over the counter"
+DIRECTIONS = ("both", "back", "forward")
 
 
 @dataclass(frozen=True)
@@ -37,12 +44,40 @@ class Accounting:
         return sum(self.in_stock.values())
 
     @property
+    def known(self) -> int:
+        """Return what records explain; what came back stays shipped here: it is a lot anew."""
+        return self.stock_total + self.shipped + self.removed + self.used
+
+    @property
     def unexplained(self) -> int | None:
         """Return what no record explains; ``None`` while the lot's quantity is pending."""
         if self.made is None:
             return None
-        known = self.stock_total + self.shipped + self.removed + self.used
-        return self.made + self.adjusted - known
+        return self.made + self.adjusted - self.known
+
+
+@dataclass(frozen=True)
+class Shipment:
+    """One line of a sale: what of which lot went out, or came back, and by which record."""
+
+    step: Step
+    lot: Lot
+    quantity: int | None
+    returned: bool = False
+
+    @property
+    def customer(self) -> str:
+        """Return who got it."""
+        return str(self.step.partner or COUNTER)
+
+
+@dataclass(frozen=True)
+class Instrument:
+    """An instrument that read something behind a lot: how often, and when last."""
+
+    tag: str
+    readings: int
+    last: Any
 
 
 @dataclass(frozen=True)
@@ -55,38 +90,78 @@ class Story:
     steps: dict[int, Step]
     lots: dict[int, Lot]
     accounting: Accounting
-    customers: list[tuple[str, int, str]]
-    suppliers: list[str]
-    woods: list[str]
-    people: list[str]
-    instruments: list[str]
-    bounds: list[Step] = field(default_factory=list)
-    breaks: list[Step] = field(default_factory=list)
+    shipments: list[Shipment] = field(default_factory=list)
+    instruments_used: list[Instrument] = field(default_factory=list)
+    bounded: bounds.Bounds = field(default_factory=bounds.Bounds)
     held: frozenset[int] = frozenset()
+    unposted: list[UnpostedEntry] = field(default_factory=list)
+    follow: str = "all"
+    direction: str = "both"
+
+    @property
+    def back_steps(self) -> list[Step]:
+        """Return the records behind the lot, its own among them, by time."""
+        found = [self.steps[pk] for pk in self.back.steps if pk in self.steps]
+        return sorted(found, key=lambda step: (step.started_at, step.pk))
+
+    def of_kind(self, kind: StepKind) -> list[Step]:
+        """Return the records of one kind behind the lot."""
+        return [step for step in self.back_steps if step.kind == kind]
+
+    @property
+    def customers(self) -> list[tuple[str, int, str]]:
+        """Return who got how much of which lot."""
+        rows: dict[tuple[str, str], int] = {}
+        for one in self.shipments:
+            if not one.returned:
+                key = (one.customer, one.lot.code)
+                rows[key] = rows.get(key, 0) + (one.quantity or 0)
+        return sorted((name, quantity, code) for (name, code), quantity in rows.items())
+
+    @property
+    def suppliers(self) -> list[str]:
+        """Return who supplied anything behind the lot."""
+        return _names(step.partner for step in self.of_kind(StepKind.RECEIVING))
+
+    @property
+    def woods(self) -> list[str]:
+        """Return the woods sections the sap came from."""
+        return _names(step.place for step in self.of_kind(StepKind.COLLECTION))
+
+    @property
+    def people(self) -> list[str]:
+        """Return who recorded what is behind the lot."""
+        return _names(step.recorded_by for step in self.back_steps)
+
+    @property
+    def instruments(self) -> list[str]:
+        """Return the tags of the instruments that read what is behind the lot."""
+        return [one.tag for one in self.instruments_used]
+
+    @property
+    def bounds(self) -> list[Step]:
+        """Return the clean break before each vessel's first use."""
+        return self.bounded.before
+
+    def records_of(self) -> list[tuple[str, int]]:
+        """Return who recorded how many of the records behind the lot."""
+        return sorted(Counter(str(step.recorded_by) for step in self.back_steps).items())
 
 
-def tell(lot: Lot, follow: str = "all") -> Story:
-    """Trace one lot both ways; a constant number of statements whatever the size."""
+def tell(lot: Lot, follow: str = "all", direction: str = "both") -> Story:
+    """Trace one lot back, forward or both; a constant number of statements whatever the size."""
+    nothing = Cone(frozenset(), ())
     behind = back(lot.made_by_id, follow)
-    ahead = forward(lot.pk, follow)
-    step_ids = behind.steps | ahead.steps
+    if direction == "forward":
+        behind = Cone(frozenset({lot.made_by_id}), ())
+    ahead = nothing if direction == "back" else forward(lot.pk, follow)
     steps = {
         step.pk: step
-        for step in Step.objects.filter(pk__in=step_ids).select_related(
+        for step in Step.objects.filter(pk__in=behind.steps | ahead.steps).select_related(
             "place", "partner", "recorded_by"
         )
     }
-    lots = {
-        one.pk: one
-        for one in Lot.objects.filter(pk__in=behind.lots | ahead.lots | {lot.pk}).select_related(
-            "item", "made_by__partner", "printed_code", "put_in"
-        )
-    }
-    made_ahead = Lot.objects.filter(made_by__in=ahead.steps).select_related(
-        "item", "made_by__partner", "printed_code", "put_in"
-    )
-    lots |= {one.pk: one for one in made_ahead}
-    back_steps = [steps[pk] for pk in behind.steps if pk in steps]
+    lots = _lots(lot, behind, ahead)
     return Story(
         lot=lot,
         back=behind,
@@ -94,78 +169,54 @@ def tell(lot: Lot, follow: str = "all") -> Story:
         steps=steps,
         lots=lots,
         accounting=account(lot),
-        customers=_customers(ahead, steps, lots),
-        suppliers=_names(step.partner for step in back_steps if step.kind == StepKind.RECEIVING),
-        woods=_names(step.place for step in back_steps if step.kind == StepKind.COLLECTION),
-        people=_names(step.recorded_by for step in back_steps),
-        instruments=_instruments(behind),
-        bounds=(bounds := _bounds(back_steps)),
-        breaks=_breaks(steps, behind.links + ahead.links, lots, bounds),
+        shipments=_shipments(ahead, steps, lots),
+        instruments_used=_instruments(behind),
+        bounded=bounds.of(behind, ahead, steps, lots, follow),
         held=frozenset(
             Hold.objects.filter(lot__in=lots, ended_at=None).values_list("lot", flat=True)
         ),
+        unposted=list(
+            UnpostedEntry.objects.filter(lots__in=lots, settled_at=None)
+            .distinct()
+            .order_by("happened_at", "pk")
+        ),
+        follow=follow,
+        direction=direction,
     )
 
 
-def _breaks(
-    steps: dict[int, Step], links: Iterable[Link], lots: dict[int, Lot], bounds: list[Step]
-) -> list[Step]:
-    """Return the clean breaks that bound a chain: before, between and next after a vessel's use."""
-    used: dict[int, list[datetime]] = {}
-    for step in steps.values():
-        if step.place_id:
-            used.setdefault(step.place_id, []).append(step.started_at)
-    for link in links:
-        vessel = lots[link.lot].put_in_id
-        if vessel:
-            times = (steps[pk].started_at for pk in (link.from_step, link.step) if pk in steps)
-            used.setdefault(vessel, []).extend(times)
-    rows = Step.objects.filter(kind=StepKind.CLEANING, place__in=used, voided_at=None)
-    found = {step.pk: step for step in bounds}
-    ended: set[int] = set()
-    for step in rows.order_by("started_at", "pk").select_related("place"):
-        times = used.get(step.place_id or 0)
-        if times and step.started_at >= min(times) and step.place_id not in ended:
-            found[step.pk] = step
-            if step.started_at > max(times):
-                ended.add(step.place_id or 0)
-    return sorted(found.values(), key=lambda step: (step.started_at, step.pk))
+def _lots(lot: Lot, behind: Cone, ahead: Cone) -> dict[int, Lot]:
+    """Return the lots of a chain, all of them at the one facility that is already known."""
+    rows = Lot.objects.select_related("item", "made_by__partner", "printed_code", "put_in")
+    found = {one.pk: one for one in rows.filter(pk__in=behind.lots | ahead.lots | {lot.pk})}
+    found |= {one.pk: one for one in rows.filter(made_by__in=ahead.steps)}
+    for one in found.values():
+        if one.facility_id == lot.facility_id:
+            one.facility = lot.facility
+    return found
 
 
-def _names(things: Any) -> list[str]:
+def _names(things: Iterable[Any]) -> list[str]:
     return sorted({str(thing) for thing in things if thing is not None})
 
 
-def _instruments(cone: Cone) -> list[str]:
+def _instruments(cone: Cone) -> list[Instrument]:
     rows = Reading.objects.filter(step__in=cone.steps, instrument__isnull=False)
-    return sorted(set(rows.values_list("instrument__tag", flat=True)))
+    counted = rows.values("instrument__tag").annotate(readings=Count("pk"), last=Max("at"))
+    return [
+        Instrument(row["instrument__tag"], row["readings"], row["last"])
+        for row in counted.order_by("instrument__tag")
+    ]
 
 
-def _customers(
-    cone: Cone, steps: dict[int, Step], lots: dict[int, Lot]
-) -> list[tuple[str, int, str]]:
-    rows: dict[tuple[str, str], int] = {}
-    for link in cone.links:
-        if link.role == DrawRole.SHIPPED and link.step in steps:
-            name = str(steps[link.step].partner or "over the counter")
-            key = (name, lots[link.lot].code)
-            rows[key] = rows.get(key, 0) + (link.quantity or 0)
-    return sorted((name, quantity, code) for (name, code), quantity in rows.items())
-
-
-def _bounds(steps: list[Step]) -> list[Step]:
-    """Return for each vessel behind a lot its last clean break before the earliest step there."""
-    first: dict[int, datetime] = {}
-    for step in steps:
-        if step.place_id:
-            known = first.get(step.place_id, step.started_at)
-            first[step.place_id] = min(known, step.started_at)
-    broken = Step.objects.filter(kind=StepKind.CLEANING, place__in=first, voided_at=None)
-    last: dict[int, Step] = {}
-    for step in broken.order_by("started_at", "pk").select_related("place"):
-        if step.place_id and step.started_at < first[step.place_id]:
-            last[step.place_id] = step
-    return sorted(last.values(), key=lambda step: (step.started_at, step.pk))
+def _shipments(cone: Cone, steps: dict[int, Step], lots: dict[int, Lot]) -> list[Shipment]:
+    roles = (DrawRole.SHIPPED, DrawRole.RETURNED)
+    found = [
+        Shipment(steps[link.step], lots[link.lot], link.quantity, link.role == DrawRole.RETURNED)
+        for link in cone.links
+        if link.role in roles and link.step in steps
+    ]
+    return sorted(found, key=lambda one: (one.customer, one.step.started_at, one.lot.code))
 
 
 def account(lot: Lot) -> Accounting:

@@ -4,6 +4,7 @@ import random
 from datetime import UTC, datetime, timedelta
 
 from lots.models import Facility, Item, Lot, Partner, Place, Step
+from lots.tracing.bounds import Bounds
 from lots.tracing.cone import Cone, Link
 from lots.tracing.story import Accounting, Story
 
@@ -70,7 +71,7 @@ def tangle(seed, size):
     asked = dice.choice(list(lots.values()))
     return Story(
         lot=asked, back=Cone(frozenset(steps), tuple(links)), forward=Cone(frozenset(), ()),
-        steps=steps, lots=lots, accounting=Accounting(0, 0, {}, 0, 0, 0, 0), customers=[],
-        suppliers=[], woods=[], people=[], instruments=[], breaks=breaks,
+        steps=steps, lots=lots, accounting=Accounting(0, 0, {}, 0, 0, 0, 0),
+        bounded=Bounds(breaks=breaks),
         held=frozenset(dice.sample(sorted(lots), len(lots) // 4)),
     )  # fmt: skip

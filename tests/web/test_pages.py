@@ -171,7 +171,7 @@ def test_a_lot_page_tells_its_story_and_a_lead_signs_a_release(client, house):
 def test_a_code_leads_to_its_lot_and_an_unknown_one_to_the_nearest(recorder, house):
     jars = house.jars()
     answer = recorder.get(url(house, "trace"), {"q": jars.printed_code.text.lower()})
-    assert answer.headers["Location"] == url(house, "lot", jars.uuid)
+    assert url(house, "lot", jars.uuid) in answer.content.decode()
     near = recorder.get(url(house, "trace"), {"q": jars.printed_code.text[:5] + "999"})
     assert jars.code in near.content.decode()
 

@@ -4,43 +4,68 @@ from typing import Any
 from uuid import UUID
 
 from django.http import HttpRequest, HttpResponse
-from django.shortcuts import redirect, render
+from django.shortcuts import render
 from django.urls import reverse
 from django.utils import timezone
 from django.utils.safestring import mark_safe
 
 from lots.documents import picture
-from lots.models import Facility, Lot
+from lots.models import Facility, Hold, Lot
 from lots.recording import decisions
-from lots.rules.roles import Action
+from lots.rules.roles import Action, Role, may
 from lots.tracing import find, story
 
+from .. import trails
 from ..access import allow, facility_of, get_lot
-from ..words import amount_words, lot_sentence
+from ..words import accounting_rows, amount_words, bound_words, buyers, listed, lot_sentence
 
 QUESTIONS = {
     "composition": "What is in it",
-    "with-aids": "What is in it, with aids, packaging and cleaning agents",
-    "all": "What could have touched it, residue included",
+    "with-aids": "What is in it, aids and packaging too",
+    "all": "What could have touched it",
 }
+DIRECTIONS = {"both": "Back and forward", "back": "Back", "forward": "Forward"}
+MOST_UNDER_A_CODE = 12
 
 
-def _question(request: HttpRequest) -> str:
-    asked = request.GET.get("question", "")
-    return asked if asked in QUESTIONS else "with-aids"
+def _asked(request: HttpRequest) -> tuple[str, str]:
+    """Return the question and the direction asked, each one that exists."""
+    question = request.GET.get("question", "")
+    direction = request.GET.get("direction", "")
+    return (
+        question if question in QUESTIONS else "with-aids",
+        direction if direction in DIRECTIONS else "both",
+    )
 
 
 def _address(facility: Facility) -> picture.Url:
     return lambda lot: reverse("lot", args=[facility.slug, lot.uuid])
 
 
-def drawn(told: story.Story, facility: Facility) -> dict[str, Any]:
-    """Return the picture for a template; its texts were escaped where they were set."""
+def told_context(told: story.Story, facility: Facility) -> dict[str, Any]:
+    """Return what every page of a traced lot shows: sentence first, then tables and picture."""
     made = picture.draw(told, _address(facility))
     return {
-        "svg": mark_safe(made.svg),  # noqa: S308
-        "days": mark_safe(made.days),  # noqa: S308
-        "width": made.width,
+        "lot": told.lot,
+        "told": told,
+        "sentence": lot_sentence(told),
+        "accounting": accounting_rows(told),
+        "customers": trails.customer_rows(told.shipments),
+        "suppliers": trails.supplier_rows(told),
+        "facts": trails.facts(told),
+        "bounds": bound_words(told),
+        "back": trails.link_rows(told, told.back.links),
+        "ahead": trails.link_rows(told, told.forward.links),
+        "unposted": told.unposted,
+        "question": told.follow,
+        "questions": QUESTIONS.items(),
+        "direction": told.direction,
+        # Escaped where its texts were set.
+        "picture": {
+            "svg": mark_safe(made.svg),  # noqa: S308
+            "days": mark_safe(made.days),  # noqa: S308
+            "width": made.width,
+        },
     }
 
 
@@ -48,23 +73,12 @@ def drawn(told: story.Story, facility: Facility) -> dict[str, Any]:
 def lot(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     """Show one lot: its story, checks, holds, and where it came from and went."""
     found = get_lot(request, uuid)
-    question = _question(request)
-    told = story.tell(found, question)
-    context = {
-        "lot": found,
+    question, _ = _asked(request)
+    context = told_context(story.tell(found, question), facility_of(request)) | {
         "title": found.code,
-        "sentence": lot_sentence(told),
-        "story": told,
-        "questions": QUESTIONS.items(),
-        "question": question,
-        "picture": drawn(told, facility_of(request)),
-        "back": _rows(told, told.back.links),
-        "ahead": _rows(told, told.forward.links),
         "checks": found.checks.select_related("reading"),
         "readings": found.readings.select_related("instrument"),
         "holds": found.holds.select_related("placed_by", "ended_by").prefetch_related("actions"),
-        "stock": [(name, amount_words(found, n)) for name, n in told.accounting.in_stock.items()],
-        "remaining": amount_words(found, found.remaining),
         "shown": decisions.shown_hash(found),
         "descendants": decisions.descendants_in_stock(found),
     }
@@ -75,8 +89,8 @@ def lot(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
 def chain(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     """Show a lot's picture cut into pieces that fit a sheet."""
     found = get_lot(request, uuid)
-    question = _question(request)
-    told = story.tell(found, question)
+    question, direction = _asked(request)
+    told = story.tell(found, question, direction)
     pieces = [
         {"caption": sheet.caption, "svg": mark_safe(sheet.svg)}  # noqa: S308
         for sheet in picture.sheets(told)
@@ -93,29 +107,62 @@ def chain(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     return render(request, "lots/chain.html", context)
 
 
-def _rows(told: story.Story, links: tuple) -> list[dict[str, object]]:
-    rows = []
-    for link in sorted(links, key=lambda link: told.steps[link.step].started_at):
-        one = told.lots[link.lot]
-        rows.append(
-            {
-                "lot": one,
-                "step": told.steps[link.step],
-                "role": link.role,
-                "amount": amount_words(one, link.quantity),
-            }
-        )
-    return rows
-
-
 @allow(Action.TRACE)
 def trace(request: HttpRequest, slug: str) -> HttpResponse:
-    """Take any code and lead to its lot, or to the nearest ones."""
+    """Take any code, in one direction or both, and answer with a sentence, tables and picture."""
     facility = facility_of(request)
     words = request.GET.get("q", "").strip()
-    found: list[Lot] = list(find.lots_by_code(facility, words)[:50]) if words else []
-    if len(found) == 1:
-        return redirect("lot", slug, found[0].uuid)
-    near = find.nearest(facility, words) if words and not found else []
-    context = {"title": "Trace", "q": words, "found": found, "near": near}
+    question, direction = _asked(request)
+    every = list(find.lots_by_code(facility, words)) if words else []
+    found = every[:MOST_UNDER_A_CODE]
+    chosen = found[0] if len(found) == 1 else _chosen(request, every)
+    context: dict[str, Any] = {
+        "title": "Trace",
+        "q": words,
+        "found": found,
+        "near": find.nearest(facility, words) if words and not found else [],
+        "question": question,
+        "questions": QUESTIONS.items(),
+        "direction": direction,
+        "directions": DIRECTIONS.items(),
+        "may_packet": may(Role(request.member.role), Action.ISSUE_PACKET),  # type: ignore[attr-defined]
+    }
+    for one in every:
+        one.facility = facility
+    if len(found) > 1:
+        context["several"] = _several(words, found) | {"more": len(every) - len(found)}
+    if chosen is not None:
+        told = story.tell(chosen, question, direction)
+        context |= told_context(told, facility) | {"on_hold": chosen.pk in told.held}
     return render(request, "lots/trace.html", context)
+
+
+def _chosen(request: HttpRequest, found: list[Lot]) -> Lot | None:
+    """Return which of the lots under one code was picked."""
+    asked = request.GET.get("lot", "")
+    return next((one for one in found if str(one.uuid) == asked), None)
+
+
+def _several(code: str, found: list[Lot]) -> dict[str, Any]:
+    """Return what is said of all lots under one code: splits, returns, sizes of one run."""
+    told = [story.tell(one, "composition", "forward") for one in found]
+    held = set(Hold.objects.filter(lot__in=found, ended_at=None).values_list("lot", flat=True))
+    shipments = {(one.step.pk, one.lot.pk): one for each in told for one in each.shipments}
+    names = {one.customer for one in shipments.values() if not one.returned}
+    items = dict.fromkeys(str(one.item) for one in found)
+    reached = f"they reached {buyers(names)}" if names else "none was shipped"
+    return {
+        "sentence": f"{code} stands on {len(found)} lots of {listed(list(items))}; {reached}. "
+        "Choose one to trace it.",
+        "customers": trails.customer_rows(list(shipments.values())),
+        "rows": [
+            {
+                "lot": one.lot,
+                "made": amount_words(one.lot, one.lot.made),
+                "stock": amount_words(one.lot, one.accounting.stock_total),
+                "shipped": amount_words(one.lot, one.accounting.shipped),
+                "held": one.lot.pk in held,
+            }
+            for one in told
+        ],
+    }
