@@ -4,6 +4,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from datetime import date, datetime
 from decimal import Decimal
+from uuid import uuid4
 
 from lots.models import DrawRole, Item, Lot, Place, PrintedCode, Step, StepKind
 from lots.quantities import rounding
@@ -77,7 +78,8 @@ def close_container_fill(
         if step.ended_at is not None:
             raise RecordingError("This run is closed.")
         writer.check_time(step.started_at, ended_at)
-        Step.objects.filter(pk=step.pk).update(ended_at=ended_at)
+        said = {"net_sample": run.net_sample, "rejected": run.rejected}
+        Step.objects.filter(pk=step.pk).update(ended_at=ended_at, detail=step.detail | said)
         step.refresh_from_db()
         writer.answer = writer.touch(step)
         writer.label = step.in_words(writer.facility.zone)
@@ -95,20 +97,46 @@ def record_container_fill(
     note: str = "",
     people: str = "",
 ) -> Step:
-    """Record a whole run in one go."""
+    """Record a whole run of one product in one go."""
+    (step,) = record_container_fills(
+        context, at=at, runs=[(sources, run)], ended_at=ended_at, note=note, people=people
+    )
+    return step
+
+
+def record_container_fills(
+    context: Context,
+    *,
+    at: datetime,
+    runs: Sequence[tuple[Sequence[_sources.Source], Run]],
+    ended_at: datetime | None = None,
+    note: str = "",
+    people: str = "",
+) -> list[Step]:
+    """Record the products of one run, each its own step with its own sources: all, or none.
+
+    Several steps share the UUID of their entry group. Sources are drawn in the order of the runs.
+    """
+    if not runs:
+        raise RecordingError("Enter at least one product.", field="product")
+    group = uuid4() if len(runs) > 1 else None
     with context.open("container fill") as writer:
-        step = writer.step(
-            StepKind.CONTAINER_FILL,
-            at,
-            ended_at=ended_at or at,
-            place=run.into,
-            note=note,
-            people=people,
-            detail={"net_sample": run.net_sample, "rejected": run.rejected},
-        )
-        code = _codes.reserve_code(writer, run.product, at, run.printed_code)
-        _fill(writer, step, sources, run, code)
-        return step
+        steps = []
+        for sources, run in runs:
+            step = writer.step(
+                StepKind.CONTAINER_FILL,
+                at,
+                ended_at=ended_at or at,
+                group=group,
+                place=run.into,
+                note=note,
+                people=people,
+                detail={"net_sample": run.net_sample, "rejected": run.rejected},
+            )
+            code = _codes.reserve_code(writer, run.product, at, run.printed_code)
+            _fill(writer, step, sources, run, code)
+            steps.append(step)
+        return steps
 
 
 def _fill(

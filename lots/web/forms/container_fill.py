@@ -9,64 +9,52 @@ from lots.recording.context import Context
 from . import fields
 from .base import RecordForm
 from .choices import HOT_CAUTION, STORES, items, places
+from .second_product import PACKAGING, SecondProduct
 from .sources import SourceFields
 
 
-class ContainerFillForm(fields.DensityFields, SourceFields):
-    """One product's run."""
+class FillFields(fields.DensityFields, SourceFields):
+    """What a run says of itself, whole or at its end: what it drew, used and made."""
 
-    title = "Container fill"
-    verb = "Record fill"
     caution = HOT_CAUTION
+    vessels = 3
     made = forms.IntegerField(label="Filled", min_value=0)
     rejected = forms.IntegerField(label="Rejected", min_value=0, initial=0, required=False)
-    printed_code = forms.CharField(label="Code (empty: the next)", required=False, max_length=20)
     best_before = forms.DateField(
         label="Best before", required=False, widget=forms.DateInput(attrs={"type": "date"})
     )
     transmittance = fields.MeasureField(["%Tc"], "Colour at 560 nm")
-    people = forms.CharField(label="People", required=False, max_length=200)
-    folded = (
-        "device", "rejected", "printed_code", "best_before", "container", "closure", "label",
-        "people",
-    )  # fmt: skip
+    net_sample = forms.CharField(
+        label="Net-content sample",
+        required=False,
+        max_length=200,
+        help_text="What was weighed or measured, such as: 3 bottles, 1262, 1260 and 1263 g net.",
+    )
+    folded = ("device", "rejected", "printed_code", "best_before", *PACKAGING, "people")
 
     def build(self, facility: Facility) -> None:
-        """Offer products, stock and stores."""
+        """Offer stock and stores."""
         super().build(facility)
-        self.fields["product"] = forms.ModelChoiceField(items(facility, ItemKind.PACKED))
         self.fields["into"] = forms.ModelChoiceField(places(facility, *STORES), label="Stored in")
         for number in ("1", "2", "3"):
             self.fields[f"fill_{number}"] = fields.temperature(
                 facility, f"Fill temperature {number}"
             )
         self.fields["sample_temperature"] = fields.temperature(facility, "Sample temperature")
-        for kind in (ItemKind.CONTAINER, ItemKind.CLOSURE, ItemKind.LABEL):
+        for kind in PACKAGING:
             self.fields[kind.value] = fields.LotChoice(
                 fields.lots_in_stock(facility, kind), required=False, label=f"{kind.label} lot"
             )
         self.order_fields(
             (
-                "at",
-                "product",
-                "made",
-                "source",
-                "taken",
-                "emptied",
-                "fill_1",
-                "fill_2",
-                "fill_3",
-                "brix",
-                "sample_temperature",
-                "transmittance",
-                "into",
-            )  # fmt: skip
-        )
+                "at", "product", "made", "source", "taken", "emptied", "fill_1", "fill_2",
+                "fill_3", "brix", "sample_temperature", "transmittance", "net_sample", "into",
+            )
+        )  # fmt: skip
 
     def run(self, product: Item) -> container_fill.Run:
         """Return what the form says of the run."""
         data = self.cleaned_data
-        used = [data[kind] for kind in ("container", "closure", "label") if data.get(kind)]
         return container_fill.Run(
             product=product,
             made=data["made"],
@@ -77,18 +65,34 @@ class ContainerFillForm(fields.DensityFields, SourceFields):
             fill_temperatures=[data[f"fill_{number}"] for number in ("1", "2", "3")],
             brix=self.density(),
             transmittance=data["transmittance"],
-            packaging=[container_fill.Packaging(lot) for lot in used],
+            packaging=[container_fill.Packaging(data[kind]) for kind in PACKAGING if data[kind]],
+            net_sample=data["net_sample"],
         )
 
+
+class ContainerFillForm(SecondProduct, FillFields):
+    """A whole run of one product, or of two out of the same vessels."""
+
+    title = "Container fill"
+    verb = "Record fill"
+    printed_code = forms.CharField(label="Code (empty: the next)", required=False, max_length=20)
+    people = forms.CharField(label="People", required=False, max_length=200)
+    groups = (*FillFields.groups, *SecondProduct.groups)
+
+    def build(self, facility: Facility) -> None:
+        """Offer products."""
+        self.fields["product"] = forms.ModelChoiceField(items(facility, ItemKind.PACKED))
+        super().build(facility)
+        self.add_second(facility)
+
     def record(self, context: Context) -> Step:
-        """Record the whole run."""
-        return container_fill.record_container_fill(
-            context,
-            at=self.moment,
-            sources=self.sources(),
-            run=self.run(self.cleaned_data["product"]),
-            people=self.cleaned_data["people"],
+        """Record the run: one product or two, in one transaction."""
+        data = self.cleaned_data
+        first = self.run(data["product"])
+        steps = container_fill.record_container_fills(
+            context, at=self.moment, runs=self.runs(first, self.sources()), people=data["people"]
         )
+        return steps[0]
 
 
 class OpenFillForm(RecordForm):
@@ -120,17 +124,11 @@ class OpenFillForm(RecordForm):
         return step
 
 
-class FinishFillForm(ContainerFillForm):
-    """The end of a run that was opened: what it drew, used and made."""
+class FinishFillForm(FillFields):
+    """The end of a run that was opened; the opening said what it makes."""
 
     title = "Finish the fill"
     verb = "Finish the fill"
-
-    def build(self, facility: Facility) -> None:
-        """Leave out what the opening said."""
-        super().build(facility)
-        for name in ("product", "printed_code", "people"):
-            del self.fields[name]
 
     def record_on(self, context: Context, step: Step) -> Step:
         """Close the run."""
