@@ -2,7 +2,6 @@
 
 import json
 from collections.abc import Callable
-from dataclasses import dataclass, field
 from datetime import datetime, timedelta
 from decimal import Decimal
 from pathlib import Path
@@ -11,7 +10,13 @@ from zoneinfo import ZoneInfo
 
 from django.conf import settings
 
-from lots.models import DrawRole, Facility, Hold, Item, Lot, Partner, Place, Step, StepKind, User
+from lots.models import (
+    DrawRole,
+    Hold,
+    Lot,
+    Step,
+    StepKind,
+)
 from lots.recording import (
     boil,
     container_fill,
@@ -19,68 +24,15 @@ from lots.recording import (
     goods_out,
     receiving,
     sap,
-    setup,
     syrup,
     upkeep,
 )
 from lots.recording._sources import FromLot, FromVessel
-from lots.recording.context import Context
-from lots.recording.measures import NOT_MEASURED, DensityReading, Typed
-from lots.rules.roles import Role
+from lots.recording.measures import NOT_MEASURED, Typed
 
-PASSWORD = "sugaring-2026"  # noqa: S105 - printed for the demo alone
+from .season_house import PASSWORD, Season, measure, prepare
 
-
-def measure(pair: list[str] | None) -> Typed:
-    """Return a typed amount from a fixture's [number, unit]."""
-    return Typed(Decimal(pair[0]), pair[1]) if pair else NOT_MEASURED
-
-
-def density(pair: list[str]) -> DensityReading:
-    """Return a 60 °F hydrometer reading from [reading, sample °F]."""
-    return DensityReading(Decimal(pair[0]), sample=Typed(Decimal(pair[1]), "°F"))
-
-
-def compensated(number: str) -> DensityReading:
-    """Return a reading by a compensating refractometer."""
-    return DensityReading(Decimal(number), device="refractometer", compensates=True)
-
-
-@dataclass
-class Season:
-    """The demo's registers and its clock."""
-
-    facility: Facility
-    people: dict[str, User]
-    start: datetime
-    tags: dict[str, Lot] = field(default_factory=dict)
-    sales: dict[str, Step] = field(default_factory=dict)
-
-    def at(self, day: float, hour: float) -> datetime:
-        """Return a moment of the season."""
-        return self.start + timedelta(days=day, hours=hour)
-
-    def context(self, row: dict[str, Any], role: str = "recorder") -> Context:
-        """Return who records a row, minutes after the act or days late."""
-        hour = row.get("end", row["hour"])
-        now = self.at(row["day"] + row.get("late", 0), hour) + timedelta(minutes=5)
-        return Context(self.facility, self.people[role], now=now)
-
-    def place(self, name: str) -> Place:
-        """Return a place by name."""
-        return Place.objects.get(facility=self.facility, name=name)
-
-    def item(self, name: str) -> Item:
-        """Return an item by name."""
-        return Item.objects.get(facility=self.facility, name=name)
-
-    def partner(self, name: str) -> Partner:
-        """Return a partner by name."""
-        return Partner.objects.get(facility=self.facility, name=name)
-
-    def material(self, name: str) -> Lot:
-        """Return the lot in use of a material."""
-        return Lot.objects.filter(item=self.item(name)).order_by("made_at").get()
+__all__ = ["PASSWORD", "Season", "load"]
 
 
 def load(now: datetime, suffix: str = "") -> Season:
@@ -94,38 +46,10 @@ def load(now: datetime, suffix: str = "") -> Season:
     midnight = now.astimezone(zone).replace(hour=0, minute=0, second=0, microsecond=0)
     start = midnight - timedelta(days=data["last_day"] + 1)
     data["facility"]["slug"] += suffix
-    season = _prepare(data, start.astimezone(ZoneInfo("UTC")), suffix)
+    season = prepare(data, start.astimezone(ZoneInfo("UTC")), suffix)
     for row in data["records"]:
         ACTS[row["do"]](season, row, season.at(row["day"], row["hour"]))
     return season
-
-
-def _prepare(data: dict[str, Any], start: datetime, suffix: str) -> Season:
-    owner = User.objects.create_user(f"demo-owner{suffix}", password=PASSWORD)
-    facility = setup.create_facility(owner=owner, fictional=True, now=start, **data["facility"])
-    early = Context(facility, owner, now=start)
-    people = {"owner": owner}
-    for role in (Role.LEAD, Role.RECORDER, Role.INSPECTOR):
-        member = setup.add_person(
-            early, username=f"demo-{role.value}{suffix}", password=PASSWORD, role=role
-        )
-        people[role.value] = member.user
-    for name, kind in (*data["places"], *((name, "drum") for name in data["drums"])):
-        setup.add_place(early, name=name, kind=kind)
-    for name, kind, unit in data["items"]:
-        setup.add_item(early, name=name, kind=kind, unit=unit)
-    for name, size, unit in data["products"]:
-        setup.add_item(
-            early, name=name, kind="packed", unit="piece", size_value=size, size_unit=unit,
-            label_grade="Amber", label_version="3",
-        )  # fmt: skip
-    for kind in ("supplier", "customer"):
-        for number, name in enumerate(data[f"{kind}s"]):
-            setup.add_partner(
-                early, name=name, kind=kind, phone=f"802-555-01{number:02d}",
-                email=f"{kind}{number}@example.com", address=f"{number + 1} Example Street",
-            )  # fmt: skip
-    return Season(facility, people, start)
 
 
 def _receive(season: Season, row: dict[str, Any], at: datetime) -> None:
@@ -135,7 +59,7 @@ def _receive(season: Season, row: dict[str, Any], at: datetime) -> None:
         place=season.place(row["place"]), supplier_code=row["code"], document=row["document"],
         statement=row["statement"], decision=row.get("decision", "accept"),
         decision_reason=row.get("reason", ""),
-        brix=density(row["brix"]) if "brix" in row else None,
+        brix=season.density(row["brix"]) if "brix" in row else None,
     )  # fmt: skip
 
 
@@ -143,7 +67,7 @@ def _opening(season: Season, row: dict[str, Any], at: datetime) -> None:
     receiving.record_opening_stock(
         season.context(row), at=at, item=season.item("Syrup"), amount=measure(row["amount"]),
         place=season.place(row["drum"]), document=row["document"], code=row["code"],
-        brix=density(row["brix"]),
+        brix=season.density(row["brix"]),
     )  # fmt: skip
 
 
@@ -160,7 +84,7 @@ def _collect(season: Season, row: dict[str, Any], at: datetime) -> None:
     sap.record_collection(
         season.context(row), at=at, woods=season.place(row["woods"]),
         tank=season.place(row["tank"]), item=season.item("Sap"), amount=measure(row["amount"]),
-        brix=compensated(row["brix"]), note="Read from a paper page" if row["late"] else "",
+        brix=season.compensated(row["brix"]), note="Read from a paper page" if row["late"] else "",
     )  # fmt: skip
 
 
@@ -170,7 +94,7 @@ def _concentrate(season: Season, row: dict[str, Any], at: datetime) -> None:
         machine=season.place("RO"), into=season.place(row["into"]),
         sources=[FromVessel(season.place(name)) for name in row["sources"]],
         item=season.item("Concentrate"), amount=measure(row["amount"]),
-        brix=compensated(row["brix"]), permeate=measure(row["permeate"]),
+        brix=season.compensated(row["brix"]), permeate=measure(row["permeate"]),
     )  # fmt: skip
 
 
@@ -192,7 +116,7 @@ def _running(season: Season) -> Step:
 
 def _boil_off(season: Season, row: dict[str, Any], at: datetime) -> None:
     draw = boil.DrawOff(
-        at, season.place("Batch tank"), measure(row["amount"]), density(row["brix"]),
+        at, season.place("Batch tank"), measure(row["amount"]), season.density(row["brix"]),
         Typed(Decimal("218.9"), "°F"),
     )  # fmt: skip
     boil.draw_off(season.context(row), boil=_running(season), item=season.item("Syrup"), draw=draw)
@@ -200,7 +124,7 @@ def _boil_off(season: Season, row: dict[str, Any], at: datetime) -> None:
 
 def _boil_light(season: Season, row: dict[str, Any], at: datetime) -> None:
     amount = Typed(Decimal(row["amount"]), "US gal")
-    light = boil.DrawOff(at, season.place("Filtered tank"), amount, density(row["brix"]))
+    light = boil.DrawOff(at, season.place("Filtered tank"), amount, season.density(row["brix"]))
     fire = _running(season)
     lot = boil.draw_off(season.context(row), boil=fire, item=season.item("Syrup"), draw=light)
     boil.put_back(
@@ -211,7 +135,7 @@ def _boil_light(season: Season, row: dict[str, Any], at: datetime) -> None:
 def _boil_close(season: Season, row: dict[str, Any], at: datetime) -> None:
     boil.close_boil(
         season.context(row), boil=_running(season), at=at, contents=season.item("Pan contents"),
-        stays=measure(row["stays"]), brix=compensated(row["stays_brix"]),
+        stays=measure(row["stays"]), brix=season.compensated(row["stays_brix"]),
     )  # fmt: skip
 
 
@@ -226,7 +150,7 @@ def _filter(season: Season, row: dict[str, Any], at: datetime) -> None:
         season.context(row), kind=StepKind.FILTRATION, at=at, machine=season.place("Press"),
         sources=[FromVessel(season.place("Batch tank")), *aids],
         into=season.place("Filtered tank"), item=season.item("Syrup"),
-        amount=measure(row["amount"]), brix=density(row["brix"]),
+        amount=measure(row["amount"]), brix=season.density(row["brix"]),
         detail={"clarity": row["clarity"], "filter": "press"},
     )  # fmt: skip
 
@@ -243,7 +167,7 @@ def _drums(season: Season, row: dict[str, Any], at: datetime) -> None:
     ]
     syrup.record_drum_fill(
         season.context(row), at=at, sources=[FromVessel(season.place("Filtered tank"))],
-        drums=drums, item=season.item("Syrup"), brix=density(row["brix"]),
+        drums=drums, item=season.item("Syrup"), brix=season.density(row["brix"]),
         transmittance=Typed(Decimal(row["tc"]), "%Tc"),
     )  # fmt: skip
 
@@ -252,7 +176,7 @@ def _blend(season: Season, row: dict[str, Any], at: datetime) -> None:
     syrup.record_mixture(
         season.context(row), kind=StepKind.BLEND, at=at, item=season.item("Syrup"),
         sources=[FromVessel(season.place(name)) for name in row["sources"]],
-        into=season.place(row["into"]), brix=density(row["brix"]),
+        into=season.place(row["into"]), brix=season.density(row["brix"]),
     )  # fmt: skip
 
 
@@ -267,7 +191,7 @@ def _bottle(season: Season, row: dict[str, Any], at: datetime) -> None:
     used = [row["container"], "Closure", "Label, amber, version 3"]
     run = container_fill.Run(
         product=season.item(row["product"]), made=row["made"], rejected=row["rejected"],
-        into=season.place("Store"), brix=density(row["brix"]),
+        into=season.place("Store"), brix=season.density(row["brix"]),
         fill_temperatures=[Typed(Decimal(one), "°F") for one in row["temps"]],
         transmittance=Typed(Decimal(row["tc"]), "%Tc"),
         best_before=(at + timedelta(days=730)).date(),
