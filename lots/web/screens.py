@@ -35,6 +35,19 @@ OTHERS: dict[str, type[RecordForm]] = {
     "open-fill": container_fill.OpenFillForm,
 }
 FORMS = {**SCREENS, **OTHERS}
+# What usually follows a kind of step; another of the same kind is always offered after these.
+NEXT: dict[str, tuple[str, ...]] = {
+    StepKind.COLLECTION.value: ("collection", "concentration", "boil"),
+    StepKind.CONCENTRATION.value: ("boil",),
+    StepKind.BOIL.value: ("filtration",),
+    StepKind.FILTRATION.value: ("container-fill", "drum-fill"),
+    StepKind.BLEND.value: ("reheat", "container-fill"),
+    StepKind.TRANSFER.value: ("container-fill",),
+    StepKind.REHEAT.value: ("grade-reading", "container-fill"),
+    StepKind.DRUM_FILL.value: ("grade-reading",),
+    StepKind.CONTAINER_FILL.value: ("grade-reading", "sale"),
+    StepKind.REWORK.value: ("reheat",),
+}
 RUNNING: dict[str, dict[str, type[RecordForm]]] = {
     StepKind.BOIL.value: {
         "feed": boil.FeedForm,

@@ -3,7 +3,7 @@
 from django.contrib.auth import views as auth
 from django.urls import path
 
-from .views import browse, decide, packet, record, registers, today, trace
+from .views import browse, decide, packet, record, registers, step, tags, today, trace
 
 urlpatterns = [
     path("", browse.home, name="home"),
@@ -21,7 +21,8 @@ urlpatterns = [
     path("f/<slug:slug>/lots/<uuid:uuid>/packet.<slug:form>", packet.lot_packet, name="packet"),
     path("f/<slug:slug>/holds/<uuid:uuid>/", decide.decide, name="decide"),
     path("f/<slug:slug>/record/<slug:kind>/", record.record, name="record"),
-    path("f/<slug:slug>/steps/<uuid:uuid>/", record.step, name="step"),
+    path("f/<slug:slug>/steps/<uuid:uuid>/", step.step, name="step"),
+    path("f/<slug:slug>/steps/<uuid:uuid>/tags/", tags.tags, name="tags"),
     path("f/<slug:slug>/steps/<uuid:uuid>/void/", decide.void, name="void"),
     path("f/<slug:slug>/steps/<uuid:uuid>/divide/", decide.divide, name="divide"),
     path("f/<slug:slug>/steps/<uuid:uuid>/amend/", decide.amend, name="amend"),

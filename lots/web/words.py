@@ -213,3 +213,21 @@ def _vessel_names(places: Sequence[Place]) -> str:
     if len(drums) < 4:
         return listed([*names, *(one.name for one in drums)])
     return listed([*names, f"{len(drums)} drums"])
+
+
+def checks_sentence(outcomes: Sequence[str]) -> str:
+    """Return what a record's checks found together, as one sentence; empty without any."""
+    if not outcomes:
+        return ""
+    parts = []
+    for words, kinds in (
+        ("passed", ("pass",)),
+        ("borderline", ("borderline-pass",)),
+        ("failed", ("fail", "borderline-fail")),
+        ("not set", ("not-set",)),
+    ):
+        number = sum(outcome in kinds for outcome in outcomes)
+        if number:
+            parts.append(f"{number} {words}")
+    count = len(outcomes)
+    return f"{count} check{'' if count == 1 else 's'}: {', '.join(parts)}."

@@ -4,11 +4,12 @@ from decimal import Decimal, InvalidOperation
 from uuid import UUID
 
 from django.contrib import messages
+from django.db import transaction
 from django.http import HttpRequest, HttpResponse
 from django.shortcuts import get_object_or_404, redirect, render
 from django.views.decorators.http import require_POST
 
-from lots.models import Hold, Membership, UnpostedEntry
+from lots.models import Hold, Membership, Step, UnpostedEntry
 from lots.quantities.units import UnitError
 from lots.recording import amend as corrections
 from lots.recording import decisions, setup
@@ -161,10 +162,19 @@ def divide(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
 @allow(Action.RECORD)
 @require_POST
 def void(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
-    """Void a record: a lead's act, or a recorder's own within two minutes."""
+    """Void a record: a lead's act, or a recorder's own within two minutes.
+
+    An undo takes back all that the same form wrote.
+    """
     step = get_step(request, uuid)
+    steps = [step]
+    if "together" in request.POST and step.group:
+        others = Step.objects.filter(facility=step.facility, group=step.group, voided_at=None)
+        steps = list(others.order_by("-pk")) or steps
     try:
-        decisions.void_step(context_of(request), step=step, reason=_said(request, "reason"))
+        with transaction.atomic():
+            for one in steps:
+                decisions.void_step(context_of(request), step=one, reason=_said(request, "reason"))
     except RecordingError as error:
         messages.error(request, error.message)
     else:

@@ -1,17 +1,14 @@
-"""Recording: one form a step, and the page of a running one."""
+"""Recording: one form a step, and one an act inside a running step."""
 
 from uuid import UUID
 
 from django.contrib import messages
 from django.http import Http404, HttpRequest, HttpResponse
 from django.shortcuts import redirect, render
-from django.utils import timezone
 
-from lots.documents import details
-from lots.models import Lot, PrintedCode, Step
+from lots.models import Lot
 from lots.recording import decisions
 from lots.recording._door import AlreadyRecorded
-from lots.recording.amend import FIELDS, waiting_for_division
 from lots.recording.errors import RecordingError
 from lots.rules.roles import Action
 
@@ -91,39 +88,3 @@ def _show(request: HttpRequest, form: RecordForm) -> HttpResponse:
     refused = bool(form.errors) and form.is_bound and form.refused
     context = {"form": form, "title": form.title, "refused": refused}
     return render(request, "lots/record.html", context, status=status)
-
-
-def _acts(found: Step) -> list[tuple[str, str]]:
-    """Return what can be recorded inside a running step, with its title."""
-    acts = RUNNING.get(found.kind, {}) if found.ended_at is None else {}
-    return [(act, form.title) for act, form in acts.items()]
-
-
-def _reserved(found: Step) -> str:
-    """Return the code that an open fill reserved."""
-    uuid = found.detail.get("printed_code")
-    return PrintedCode.objects.get(uuid=uuid).text if uuid else ""
-
-
-@allow(Action.VIEW)
-def step(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
-    """Show one recorded act."""
-    found = get_step(request, uuid)
-    context = {
-        "step": found,
-        "title": found.get_kind_display(),
-        "made": found.made_lots.select_related("item", "printed_code", "facility"),
-        "draws": found.draws.select_related("lot__item", "lot__printed_code", "ended_by"),
-        "readings": found.readings.select_related("instrument"),
-        "checks": found.checks.select_related("lot"),
-        "events": found.events.order_by("at", "pk"),
-        "amendments": found.amendments.select_related("by").order_by("at", "pk"),
-        "fields": FIELDS,
-        "may_undo": found.recorded_by == request.user
-        and timezone.now() - found.recorded_at <= decisions.UNDO_WINDOW,
-        "waiting": waiting_for_division(found) if found.late else [],
-        "acts": _acts(found),
-        "details": details.rows(found),
-        "reserved": _reserved(found),
-    }
-    return render(request, "lots/step.html", context)
