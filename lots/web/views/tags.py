@@ -46,13 +46,10 @@ def weight(lot: Lot) -> str:
     if lot.made is None:
         return ""
     kilograms = Decimal(lot.made) / MILLIGRAMS_PER_KILOGRAM
-    text = f"{fixed(kilograms, 1)} kg"
-    unit = lot.facility.mass_unit
-    return (
-        text
-        if unit == "kg"
-        else f"{fixed(units.convert(kilograms, 'kg', unit), 1)} {unit} ({text})"
-    )
+    text, unit = f"{fixed(kilograms, 1)} kg", lot.facility.mass_unit
+    if unit == "kg":
+        return text
+    return f"{fixed(units.convert(kilograms, 'kg', unit), 1)} {unit} ({text})"
 
 
 def qr(request: HttpRequest, lot: Lot) -> SafeString:
