@@ -12,6 +12,7 @@ PAGES = (
     ("Lots", "lots", Action.VIEW),
     ("Vessels", "vessels", Action.VIEW),
     ("Trace", "trace", Action.TRACE),
+    ("Season", "season", Action.VIEW),
     ("Packets", "packets", Action.ISSUE_PACKET),
     ("Places", "register", Action.RECORD, "places"),
     ("Materials", "register", Action.RECORD, "materials"),

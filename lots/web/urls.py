@@ -3,7 +3,7 @@
 from django.contrib.auth import views as auth
 from django.urls import path
 
-from .views import browse, decide, packet, record, registers, step, tags, today, trace
+from .views import browse, decide, packet, record, registers, season, step, tags, today, trace
 
 urlpatterns = [
     path("", browse.home, name="home"),
@@ -32,6 +32,7 @@ urlpatterns = [
     path("f/<slug:slug>/registers/<slug:name>/<uuid:uuid>/", registers.change, name="change"),
     path("f/<slug:slug>/vessels/", browse.vessels, name="vessels"),
     path("f/<slug:slug>/trace/", trace.trace, name="trace"),
+    path("f/<slug:slug>/season/", season.season, name="season"),
     path("f/<slug:slug>/packets/", packet.packets, name="packets"),
     path("f/<slug:slug>/people/", decide.people, name="people"),
     path("f/<slug:slug>/people/<uuid:uuid>/", decide.person, name="person"),
