@@ -3,7 +3,19 @@
 from django.contrib.auth import views as auth
 from django.urls import path
 
-from .views import browse, decide, packet, record, registers, season, step, tags, today, trace
+from .views import (
+    browse,
+    decide,
+    packet,
+    record,
+    registers,
+    season,
+    step,
+    tags,
+    today,
+    trace,
+    unposted,
+)
 
 urlpatterns = [
     path("", browse.home, name="home"),
@@ -28,6 +40,7 @@ urlpatterns = [
     path("f/<slug:slug>/steps/<uuid:uuid>/amend/", decide.amend, name="amend"),
     path("f/<slug:slug>/steps/<uuid:uuid>/<slug:act>/", record.running, name="running"),
     path("f/<slug:slug>/unposted/<uuid:uuid>/", decide.settle, name="settle"),
+    path("f/<slug:slug>/unposted/<uuid:uuid>/form/", unposted.reopen, name="reopen"),
     path("f/<slug:slug>/registers/<slug:name>/", registers.register, name="register"),
     path("f/<slug:slug>/registers/<slug:name>/<uuid:uuid>/", registers.change, name="change"),
     path("f/<slug:slug>/vessels/", browse.vessels, name="vessels"),

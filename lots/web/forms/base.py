@@ -1,6 +1,7 @@
 """The base of every record form: its own id, its time, and refusals beside their fields."""
 
 import re
+from collections.abc import Mapping
 from datetime import datetime
 from typing import Any
 from uuid import UUID, uuid4
@@ -61,6 +62,7 @@ class RecordForm(forms.Form):
     rows: tuple[tuple[str, str], ...] = ()
     instead: tuple[str, str] | None = None
     refused = False
+    filled_in = False
     would_redivide = False
     within_tolerance = False
     repeated_hour = False
@@ -81,6 +83,13 @@ class RecordForm(forms.Form):
     def build(self, facility: Facility) -> None:
         """Add the fields whose choices depend on the facility."""
 
+    def fill_in(self, typed: Mapping[str, str]) -> None:
+        """Show what was typed before, exactly as typed, with none of it folded away."""
+        self.filled_in = True
+        for name, field in self.fields.items():
+            if name != "client_id":
+                self.initial[name] = field.widget.value_from_datadict(typed, {}, name)
+
     @property
     def fieldsets(self) -> list[Group]:
         """Return the groups a page shows: the numbers first, the rest folded under "More"."""
@@ -90,7 +99,16 @@ class RecordForm(forms.Form):
         for legend, names, folded in self.groups:
             found.append((legend, [name for name in names if name in self.fields], folded))
         rest = [name for name in plain if self.hides(name)]
-        return [group for group in [*found, ("More", rest, True)] if group[1]]
+        return [
+            (legend, names, folded and not self._says(names))
+            for legend, names, folded in [*found, ("More", rest, True)]
+            if names
+        ]
+
+    def _says(self, names: list[str]) -> bool:
+        """Whether a filled-in form says something in one of the fields."""
+        values = [self[name].value() for name in names] if self.filled_in else []
+        return any(value[0] if isinstance(value, list) else value for value in values)
 
     def hides(self, name: str) -> bool:
         """Whether a field stands under "More"."""
@@ -157,8 +175,19 @@ class RecordForm(forms.Form):
         return self.cleaned_data["client_id"], content
 
     def record(self, context: Context) -> Step:
-        """Write the record."""
+        """Write the record of a whole step."""
         raise RecordingError("Nothing to record.")
+
+    def record_on(self, context: Context, step: Step) -> Any:
+        """Write the record of an act inside a running step."""
+        raise RecordingError("Nothing to record.")
+
+    def write(self, context: Context) -> Step:
+        """Write the record, and return its step: the running one for an act inside it."""
+        if self.step is None:
+            return self.record(context)
+        self.record_on(context, self.step)
+        return self.step
 
     def refuse(self, error: RecordingError) -> None:
         """Put a refusal beside its field, keeping all that was typed."""

@@ -6,8 +6,6 @@ from django.contrib import messages
 from django.http import Http404, HttpRequest, HttpResponse
 from django.shortcuts import redirect, render
 
-from lots.models import Lot
-from lots.recording import decisions
 from lots.recording._door import AlreadyRecorded
 from lots.recording.errors import RecordingError
 from lots.rules.roles import Action
@@ -15,6 +13,7 @@ from lots.rules.roles import Action
 from ..access import allow, context_of, facility_of, get_step
 from ..forms.base import RecordForm
 from ..screens import FORMS, RUNNING
+from . import unposted
 
 
 @allow(Action.RECORD)
@@ -25,7 +24,7 @@ def record(request: HttpRequest, slug: str, kind: str) -> HttpResponse:
     form = FORMS[kind](facility_of(request), request.POST if request.method == "POST" else None)
     if request.method == "POST" and form.is_valid():
         try:
-            step = form.record(context_of(request, form.client()))
+            step = form.write(context_of(request, form.client()))
         except AlreadyRecorded as answer:
             messages.info(request, "This form was recorded before; here is its record.")
             if answer.step is None:
@@ -33,31 +32,12 @@ def record(request: HttpRequest, slug: str, kind: str) -> HttpResponse:
             return redirect("step", slug, answer.step.uuid)
         except RecordingError as error:
             if "happened" in request.POST:
-                return _keep(request, slug, kind, form, error)
+                return unposted.keep(request, kind, form, error)
             form.refuse(error)
         else:
             messages.success(request, f"Recorded: {step.in_words(form.facility.zone)}.")
             return redirect("step", slug, step.uuid)
     return _show(request, form)
-
-
-def _keep(
-    request: HttpRequest, slug: str, kind: str, form: RecordForm, error: RecordingError
-) -> HttpResponse:
-    """Keep a refused act that has already happened, until a lead settles it."""
-    lots = [value for value in form.cleaned_data.values() if isinstance(value, Lot)]
-    hidden = ("csrfmiddlewaretoken", "happened")
-    typed = {key: str(value) for key, value in request.POST.items() if key not in hidden}
-    decisions.keep_unposted(
-        context_of(request, form.client()),
-        kind=kind,
-        happened_at=form.moment,
-        typed=typed,
-        reason=error.message,
-        lots=lots,
-    )
-    messages.success(request, "Kept on the server, not posted: a lead settles it from Today.")
-    return redirect("today", slug)
 
 
 @allow(Action.RECORD)
@@ -71,11 +51,13 @@ def running(request: HttpRequest, slug: str, uuid: UUID, act: str) -> HttpRespon
     form = acts[act](facility_of(request), typed, step=step)
     if request.method == "POST" and form.is_valid():
         try:
-            form.record_on(context_of(request, form.client()), step)  # type: ignore[attr-defined]
+            form.write(context_of(request, form.client()))
         except AlreadyRecorded:
             messages.info(request, "This form was recorded before.")
             return redirect("step", slug, step.uuid)
         except RecordingError as error:
+            if "happened" in request.POST:
+                return unposted.keep(request, act, form, error)
             form.refuse(error)
         else:
             messages.success(request, f"Recorded: {form.title}.")
