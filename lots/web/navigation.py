@@ -17,7 +17,9 @@ PAGES = (
     ("Places", "register", Action.RECORD, "places"),
     ("Materials", "register", Action.RECORD, "materials"),
     ("Partners", "register", Action.RECORD, "partners"),
+    ("Instruments", "instruments", Action.VIEW),
     ("People", "people", Action.MANAGE_PEOPLE),
+    ("Settings", "settings", Action.MANAGE_SETTINGS),
     ("Rules", "rules", Action.VIEW),
     ("Journal", "journal", Action.VIEW),
 )

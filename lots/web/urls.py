@@ -6,6 +6,7 @@ from django.urls import path
 from .views import (
     browse,
     decide,
+    facility,
     packet,
     record,
     registers,
@@ -43,6 +44,8 @@ urlpatterns = [
     path("f/<slug:slug>/unposted/<uuid:uuid>/form/", unposted.reopen, name="reopen"),
     path("f/<slug:slug>/registers/<slug:name>/", registers.register, name="register"),
     path("f/<slug:slug>/registers/<slug:name>/<uuid:uuid>/", registers.change, name="change"),
+    path("f/<slug:slug>/instruments/", facility.instruments, name="instruments"),
+    path("f/<slug:slug>/settings/", facility.settings, name="settings"),
     path("f/<slug:slug>/vessels/", browse.vessels, name="vessels"),
     path("f/<slug:slug>/trace/", trace.trace, name="trace"),
     path("f/<slug:slug>/season/", season.season, name="season"),

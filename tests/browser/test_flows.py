@@ -97,9 +97,9 @@ def test_a_day_from_the_woods_to_a_sale(visit):
 
 PAGES = (
     "", "lots/", "vessels/", "trace/?q=nothing", "registers/places/", "people/", "rules/",
-    "journal/", "record/blend/", "packets/",
+    "journal/", "record/blend/", "packets/", "season/", "instruments/", "settings/",
 )  # fmt: skip
-AT_THE_DESK = ("", "lots/", "people/")
+AT_THE_DESK = ("", "lots/", "people/", "season/")
 
 
 @pytest.mark.parametrize("size", [PHONE, DESK], ids=["phone", "desk"])
@@ -110,7 +110,9 @@ def test_every_other_page(visit, served, size):
     jars = house.jars()
     owner = visit("owner", size)
     pages = PAGES if size == PHONE else AT_THE_DESK
-    for path in (*pages, f"lots/{jars.uuid}/", f"steps/{jars.made_by.uuid}/"):
+    of_jars = f"lots/{jars.uuid}/"
+    pages += (of_jars, of_jars + "chain/", f"trace/?q={jars.code}")
+    for path in (*pages, f"steps/{jars.made_by.uuid}/"):
         owner.goto(path)
         for fold in owner.page.locator("main details > summary").all()[:2]:
             fold.click()
