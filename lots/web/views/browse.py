@@ -5,7 +5,7 @@ from django.http import HttpRequest, HttpResponse
 from django.shortcuts import redirect, render
 from django_tables2 import RequestConfig
 
-from lots.models import JournalEntry, Lot, Membership, Place
+from lots.models import Hold, JournalEntry, Lot, LotState, Membership, Place
 from lots.rules import rule_set
 from lots.rules.regulators import REGULATORS
 from lots.rules.roles import Action
@@ -26,6 +26,9 @@ def home(request: HttpRequest) -> HttpResponse:
     return render(request, "lots/home.html", {"members": members, "title": "Facilities"})
 
 
+HELD = "held"
+
+
 @allow(Action.VIEW)
 def lots(request: HttpRequest, slug: str) -> HttpResponse:
     """List lots, by words and state."""
@@ -33,13 +36,16 @@ def lots(request: HttpRequest, slug: str) -> HttpResponse:
     words, state = request.GET.get("q", "").strip(), request.GET.get("state", "")
     rows = Lot.objects.filter(facility=facility)
     if words:
-        rows = find.lots_by_code(facility, words) or rows.filter(item__name__icontains=words)
-    if state:
+        rows = find.lots_by_words(facility, words)
+    if state == HELD:
+        rows = rows.filter(pk__in=Hold.objects.filter(ended_at=None).values("lot"))
+    elif state in LotState.values:
         rows = rows.filter(state=state)
     rows = rows.select_related("item", "printed_code", "facility")
     table = LotTable(facility, rows)
     RequestConfig(request, paginate={"per_page": 25}).configure(table)
-    context = {"table": table, "title": "Lots", "q": words, "state": state}
+    states = [*LotState.choices, (HELD, "on hold")]
+    context = {"table": table, "title": "Lots", "q": words, "state": state, "states": states}
     return render(request, "lots/lots.html", context)
 
 

@@ -74,15 +74,24 @@ def lot(request: HttpRequest, slug: str, uuid: UUID) -> HttpResponse:
     """Show one lot: its story, checks, holds, and where it came from and went."""
     found = get_lot(request, uuid)
     question, _ = _asked(request)
-    context = told_context(story.tell(found, question), facility_of(request)) | {
+    told = story.tell(found, question)
+    context = told_context(told, facility_of(request)) | {
         "title": found.code,
         "checks": found.checks.select_related("reading"),
         "readings": found.readings.select_related("instrument"),
         "holds": found.holds.select_related("placed_by", "ended_by").prefetch_related("actions"),
         "shown": decisions.shown_hash(found),
-        "descendants": decisions.descendants_in_stock(found),
+        "descendants": _descendants(request, told),
     }
     return render(request, "lots/lot.html", context)
+
+
+def _descendants(request: HttpRequest, told: story.Story) -> list[Lot]:
+    """Return what was made of a lot and is in stock, for who may hold it."""
+    if not may(Role(request.member.role), Action.HOLD):  # type: ignore[attr-defined]
+        return []
+    found = decisions.descendants_in_stock(told.lot)
+    return [told.lots.get(one.pk, one) for one in found]
 
 
 @allow(Action.VIEW)
