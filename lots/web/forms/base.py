@@ -14,6 +14,8 @@ from lots.models import Draw, Facility, Item, Lot, Step, Unit
 from lots.recording.context import Context
 from lots.recording.errors import GaugeDifference, RecordingError, WouldRedivide
 
+from . import last
+
 Group = tuple[str, list[str], bool]
 # What a form sends that is no part of what it says.
 NOT_CONTENT = frozenset({"csrfmiddlewaretoken", "client_id", "redivide", "happened", "difference"})
@@ -51,7 +53,8 @@ class RecordForm(forms.Form):
 
     ``folded`` names what stands under "More"; ``groups`` are (legend, names, folded) parts of a
     long form; ``rows`` pairs a choice of lot, item or vessel with its amount; ``instead`` is
-    (kind, words) of another form for the same work.
+    (kind, words) of another form for the same work; ``kind`` and ``same`` say what is offered as it
+    was last (see ``last.py``).
     """
 
     title = ""
@@ -61,6 +64,8 @@ class RecordForm(forms.Form):
     groups: tuple[tuple[str, tuple[str, ...], bool], ...] = ()
     rows: tuple[tuple[str, str], ...] = ()
     instead: tuple[str, str] | None = None
+    kind: str = ""
+    same: Mapping[str, last.Reader] = {}  # noqa: RUF012 - a table, never written to
     refused = False
     filled_in = False
     would_redivide = False
@@ -79,13 +84,14 @@ class RecordForm(forms.Form):
         kwargs["initial"] = {**initial, **(kwargs.get("initial") or {})}
         super().__init__(*args, **kwargs)
         self.build(facility)
+        self.offered = [] if self.is_bound else last.offer(self)
 
     def build(self, facility: Facility) -> None:
         """Add the fields whose choices depend on the facility."""
 
     def fill_in(self, typed: Mapping[str, str]) -> None:
         """Show what was typed before, exactly as typed, with none of it folded away."""
-        self.filled_in = True
+        self.filled_in, self.offered = True, []
         for name, field in self.fields.items():
             if name != "client_id":
                 self.initial[name] = field.widget.value_from_datadict(typed, {}, name)

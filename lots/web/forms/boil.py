@@ -4,12 +4,12 @@ from typing import Any
 
 from django import forms
 
-from lots.models import Facility, ItemKind, Lot, LotState, PlaceKind, Step
+from lots.models import Facility, ItemKind, Lot, LotState, PlaceKind, Step, StepKind
 from lots.recording import boil
 from lots.recording._sources import FromVessel, Source
 from lots.recording.context import Context
 
-from . import fields
+from . import fields, last
 from .aids import AidFields
 from .base import RecordForm
 from .choices import TANKS, places, the_item
@@ -30,6 +30,8 @@ class BoilForm(RecordForm):
     """Lighting the fire."""
 
     title = "Boil"
+    kind = StepKind.BOIL
+    same = {"evaporator": last.place}
     verb = "Open the boil"
     caution = EVAPORATOR_CAUTION
     instead = ("whole-boil", "Record a whole boil afterwards")
@@ -59,6 +61,8 @@ class FeedForm(AidFields):
     """Feeding a running boil, its defoamer included."""
 
     title = "Feed"
+    kind = StepKind.BOIL
+    same = {"source": last.fed_from}
     verb = "Record feed"
     aids = (DEFOAMER,)
     rows = (("source", "taken"), ("defoamer", "defoamer_amount"))
@@ -96,6 +100,8 @@ class DrawOffForm(fields.DensityFields, RecordForm):
     """Letting syrup out of the pan."""
 
     title = "Draw-off"
+    kind = StepKind.BOIL
+    same = {"into": last.drawn_into}
     verb = "Record draw-off"
     caution = EVAPORATOR_CAUTION
     folded = ("device",)

@@ -2,11 +2,11 @@
 
 from django import forms
 
-from lots.models import Facility, Item, ItemKind, PrintedCode, Step
+from lots.models import DrawRole, Facility, Item, ItemKind, PrintedCode, Step, StepKind
 from lots.recording import container_fill
 from lots.recording.context import Context
 
-from . import fields
+from . import fields, last
 from .base import RecordForm
 from .choices import HOT_CAUTION, STORES, items, places
 from .second_product import PACKAGING, SecondProduct
@@ -18,6 +18,12 @@ class FillFields(fields.DensityFields, SourceFields):
 
     caution = HOT_CAUTION
     vessels = 3
+    kind = StepKind.CONTAINER_FILL
+    same = {
+        "source": last.vessel(),
+        "into": last.put_in,
+        **{kind.value: last.used(kind, DrawRole.PACKAGING) for kind in PACKAGING},
+    }
     made = forms.IntegerField(label="Filled", min_value=0)
     rejected = forms.IntegerField(label="Rejected", min_value=0, initial=0, required=False)
     best_before = forms.DateField(
@@ -74,6 +80,7 @@ class ContainerFillForm(SecondProduct, FillFields):
     """A whole run of one product, or of two out of the same vessels."""
 
     title = "Container fill"
+    same = {"product": last.product, **FillFields.same}
     verb = "Record fill"
     printed_code = forms.CharField(label="Code (empty: the next)", required=False, max_length=20)
     people = forms.CharField(label="People", required=False, max_length=200)
@@ -99,6 +106,8 @@ class OpenFillForm(RecordForm):
     """The start of a run: its code is reserved, so that the coder can be set."""
 
     title = "Open a fill"
+    kind = StepKind.CONTAINER_FILL
+    same = {"product": last.product}
     verb = "Open and reserve the code"
     caution = HOT_CAUTION
     printed_code = forms.CharField(label="Code (empty: the next)", required=False, max_length=20)

@@ -2,12 +2,12 @@
 
 from django import forms
 
-from lots.models import Draw, DrawRole, Facility, ItemKind, Partner, PartnerKind, Step
+from lots.models import Draw, DrawRole, Facility, ItemKind, Partner, PartnerKind, Step, StepKind
 from lots.recording import goods_out
 from lots.recording._sources import FromLot
 from lots.recording.context import Context
 
-from . import fields
+from . import fields, last
 from .base import RecordForm
 from .choices import AMOUNTS, any_lot, standing
 
@@ -70,6 +70,8 @@ class CustomerReturnForm(RecordForm):
     """Goods back from a customer, on hold until decided."""
 
     title = "Customer return"
+    kind = StepKind.CUSTOMER_RETURN
+    same = {"into": last.place}
     rows = (("line", "amount"),)
     amount = fields.MeasureField(["pieces", "lb", "kg"], "Came back", required=True)
     reason = forms.CharField(max_length=200)

@@ -19,7 +19,7 @@ from lots.recording.context import Context
 from lots.recording.errors import RecordingError
 from lots.recording.measures import NOT_MEASURED
 
-from . import fields
+from . import fields, last
 from .base import RecordForm
 from .choices import AMOUNTS, items, standing
 
@@ -28,6 +28,8 @@ class ReceivingForm(fields.DensityFields, RecordForm):
     """A delivery of one lot."""
 
     title = "Receiving"
+    kind = StepKind.RECEIVING
+    same = {"place": last.put_in}
     rows = (("item", "amount"),)
     supplier_code = forms.CharField(label="Supplier's lot code", required=False, max_length=60)
     document = forms.CharField(label="Delivery slip", required=False, max_length=80)
@@ -80,6 +82,8 @@ class OpeningStockForm(fields.DensityFields, RecordForm):
     """Stock on hand when the book begins."""
 
     title = "Opening stock"
+    kind = StepKind.OPENING_STOCK
+    same = {"item": last.product, "place": last.put_in}
     rows = (("item", "amount"),)
     document = forms.CharField(label="Paper reference", max_length=80)
     code = forms.CharField(label="Its code so far", required=False, max_length=20)

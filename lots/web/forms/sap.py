@@ -2,12 +2,12 @@
 
 from django import forms
 
-from lots.models import Facility, ItemKind, PlaceKind, Step
+from lots.models import Facility, ItemKind, PlaceKind, Step, StepKind
 from lots.recording import sap
 from lots.recording._sources import FromVessel
 from lots.recording.context import Context
 
-from . import fields
+from . import fields, last
 from .base import LocalDateTimeField, RecordForm
 from .choices import places, the_item
 
@@ -18,6 +18,8 @@ class CollectionForm(fields.DensityFields, RecordForm):
     """One round of sap."""
 
     title = "Sap in"
+    kind = StepKind.COLLECTION
+    same = {"woods": last.place, "tank": last.put_in}
     field_order = ("at", "woods", "tank", "amount", "brix", "device", "sample_temperature")
     not_measured_reason = forms.CharField(
         label="Not measured because", required=False, max_length=200
@@ -56,6 +58,8 @@ class ConcentrationForm(fields.DensityFields, RecordForm):
     """One RO run."""
 
     title = "Concentrate"
+    kind = StepKind.CONCENTRATION
+    same = {"machine": last.place, "source": last.vessel(), "into": last.put_in}
     caution = PRESSURE_CAUTION
     field_order = ("at", "ended_at", "machine", "source", "taken", "into", "amount", "brix")
     rows = (("source", "taken"),)

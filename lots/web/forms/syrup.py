@@ -10,7 +10,7 @@ from lots.recording._sources import FromVessel, Source
 from lots.recording.context import Context
 from lots.recording.measures import Observation, Typed, celsius
 
-from . import fields
+from . import fields, last
 from .aids import AidFields
 from .base import RecordForm
 from .choices import HOT_CAUTION, STOCKED, TANKS, any_lot, places, the_item
@@ -23,6 +23,14 @@ class FiltrationForm(fields.DensityFields, AidFields, SourceFields):
     """A press, flat or cone filter run."""
 
     title = "Filter"
+    kind = StepKind.FILTRATION
+    same = {
+        "source": last.vessel(),
+        "into": last.put_in,
+        "filter_kind": last.detail("filter"),
+        "aid": last.used(ItemKind.FILTER_AID),
+        "paper": last.used(ItemKind.FILTER_PAPER),
+    }
     caution = HOT_CAUTION
     aids = (
         ("aid", ItemKind.FILTER_AID, "Filter aid", fields.MASSES),
@@ -98,6 +106,8 @@ class DrumFillForm(fields.DensityFields, SourceFields):
     """The drums of one filling."""
 
     title = "Drum fill"
+    kind = StepKind.DRUM_FILL
+    same = {"source": last.vessel()}
     caution = HOT_CAUTION
     transmittance = fields.MeasureField(["%Tc"], "Colour at 560 nm")
     folded = (
@@ -149,7 +159,8 @@ class MixtureForm(fields.DensityFields, RecordForm):
     """A blend, transfer or re-heat: up to three vessels into one."""
 
     caution = HOT_CAUTION
-    kind = StepKind.BLEND
+    kind: str = StepKind.BLEND
+    same = {"source_1": last.vessel(), "into": last.put_in}
     sources_offered = 3
     rows = tuple((f"source_{number}", f"taken_{number}") for number in range(1, 4))
     note = forms.CharField(required=False, widget=forms.Textarea(attrs={"rows": 2}))

@@ -2,11 +2,11 @@
 
 from django import forms
 
-from lots.models import Facility, ItemKind, PlaceKind, Step
+from lots.models import Facility, ItemKind, PlaceKind, Step, StepKind
 from lots.recording import upkeep
 from lots.recording.context import Context
 
-from . import fields
+from . import fields, last
 from .base import RecordForm
 from .choices import AMOUNTS, HOT_CAUTION, STOCKED, TANKS, any_lot, places, standing, the_item
 
@@ -15,6 +15,8 @@ class MoveForm(RecordForm):
     """Goods from one place to another."""
 
     title = "Move"
+    kind = StepKind.MOVE
+    same = {"come_from": last.come_from, "to": last.place}
     rows = (("lot", "amount"),)
     amount = fields.MeasureField(AMOUNTS, "Amount (empty: all that stands there)")
 
@@ -56,6 +58,8 @@ class ReworkForm(RecordForm):
     """Packed goods opened back to bulk."""
 
     title = "Rework"
+    kind = StepKind.REWORK
+    same = {"into": last.place}
     rows = (("lot", "amount"),)
     caution = HOT_CAUTION
     amount = fields.MeasureField(["pieces"], "Pieces (empty: all)")
@@ -82,6 +86,8 @@ class CountForm(RecordForm):
     """A count that sets the book."""
 
     title = "Count"
+    kind = StepKind.ADJUSTMENT
+    same = {"place": last.place}
     rows = (("lot", "counted"),)
     counted = fields.MeasureField(AMOUNTS, "Counted", required=True)
     reason = forms.CharField(max_length=200)

@@ -6,14 +6,14 @@ from typing import Any
 
 from django import forms
 
-from lots.models import Facility, ItemKind, PlaceKind, Step
+from lots.models import Facility, ItemKind, PlaceKind, Step, StepKind
 from lots.recording import boil
 from lots.recording._sources import FromVessel, Source
 from lots.recording.context import Context
 from lots.recording.errors import RecordingError
 from lots.recording.measures import BAUME, BRIX
 
-from . import fields
+from . import fields, last
 from .aids import AidFields
 from .base import LocalDateTimeField
 from .boil import DEFOAMER, EVAPORATOR_CAUTION, pans_were
@@ -30,6 +30,12 @@ class WholeBoilForm(fields.DensityFields, AidFields):
     """From fire lit to fire out: what it drew, its draw-offs, and what stays in the pans."""
 
     title = "Whole boil, afterwards"
+    kind = StepKind.BOIL
+    same = {
+        "evaporator": last.place,
+        "source_1": last.vessel(1),
+        "into_1": last.drawn_into,
+    }
     verb = "Record the boil"
     caution = EVAPORATOR_CAUTION
     instead = ("boil", "Open a boil that is about to run")
