@@ -16,6 +16,7 @@ from lots.recording.context import Context
 from lots.recording.errors import NotEnough, RecordingError, WouldRedivide
 from lots.recording.measures import DensityReading, Typed
 from lots.tracing import cone, verify
+from tests.conftest import EXAMPLES
 from tests.factories import brix, gallons, sugarhouse
 
 LATE = 100  # hours: everything is typed days afterwards
@@ -102,18 +103,22 @@ def ledger(house):
 
 
 class OrderOfTyping(TestCase):
-    @hypothesis_settings(max_examples=15)
+    @classmethod
+    def setUpTestData(cls):
+        cls.mixed = sugarhouse("mixed")
+        straight = sugarhouse("straight")
+        type_all(straight, range(8))
+        cls.straight = ledger(straight)
+
+    @hypothesis_settings(max_examples=max(12, EXAMPLES // 4))
     @given(st.integers(1, 10_000))
     def test_any_order_gives_the_same_live_draws_and_totals(self, seed):
-        straight = sugarhouse(f"straight-{seed}")
-        type_all(straight, range(8))
-        mixed = sugarhouse(f"mixed-{seed}")
         order = list(range(8))
         random.Random(seed).shuffle(order)
 
-        type_all(mixed, order)
+        type_all(self.mixed, order)
 
-        assert ledger(mixed) == ledger(straight), order
+        assert ledger(self.mixed) == self.straight, order
         assert list(verify.ledger_faults()) == []
 
 

@@ -5,6 +5,7 @@ import random
 import networkx
 import pytest
 from hypothesis import given
+from hypothesis import settings as hypothesis_settings
 from hypothesis import strategies as st
 from hypothesis.extra.django import TestCase
 
@@ -12,6 +13,7 @@ from lots.models import DrawRole, Lot, StepKind
 from lots.recording import _ledger
 from lots.recording.errors import WouldLoop
 from lots.tracing import cone
+from tests.conftest import EXAMPLES
 from tests.factories import sugarhouse
 
 
@@ -38,10 +40,15 @@ def random_chain(house, seed, size=14):
 
 
 class ConeTests(TestCase):
+    @classmethod
+    def setUpTestData(cls):
+        cls.house = sugarhouse("random-chains")
+
+    # Each example records a chain of its own: a quarter of the usual examples fits the time.
+    @hypothesis_settings(max_examples=max(12, EXAMPLES // 4))
     @given(st.integers(0, 10_000))
     def test_cones_equal_a_graph_library_and_leave_sisters_out(self, seed):
-        house = sugarhouse(f"random-{seed}")
-        graph, lots = random_chain(house, seed)
+        graph, lots = random_chain(self.house, seed)
         for lot in random.Random(seed).sample(lots, 4):
             behind = networkx.ancestors(graph, ("lot", lot.pk))
             ahead = networkx.descendants(graph, ("lot", lot.pk))
